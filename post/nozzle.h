@@ -2,9 +2,11 @@
 ///   c_is = sqrt(2 c_p T0 (1 - (p/p0)^((g-1)/g))),  c1 = velocity coefficient x c_is,
 ///   T1 = T0 - c1^2/(2 c_p)  (the lost kinetic energy stays in the jet as heat),
 ///   mass flow = discharge coefficient x count x isentropic flow through one throat.
-/// The jet is taken as fully expanded to the exhaust pressure before it reaches the blades, which
-/// for a convergent nozzle at a high pressure ratio is an upper bound on its speed. SI units.
-/// Source: NACA Report 1135 (1953); coefficients are common practice.
+/// The jet is taken as expanded to the exhaust pressure before it reaches the blades. Where shocks
+/// stand in or behind an overexpanded nozzle, c_is is replaced by the velocity of the jet that
+/// keeps mass and momentum, V + (p_e - p) A_e/m, so that a nozzle shaped for more pressure than it
+/// gets does not promise the full spouting velocity. SI units. Source: NACA Report 1135 (1953);
+/// coefficients are common practice.
 #pragma once
 #include "post/gas_dynamics.h"
 #include "post/velocity_triangle.h"
@@ -53,7 +55,10 @@ struct NozzleFlow {
   double jet_temperature = 0.0;           ///< T1, K
   double jet_density = 0.0;               ///< kg/m3, at exhaust pressure
   double jet_pressure = 0.0;              ///< Pa, the exhaust pressure
-  double mass_flow = 0.0;                 ///< kg/s, all nozzles
+  /// Loss-free jet at exhaust pressure that keeps the mass and momentum leaving the nozzle, m/s:
+  /// what a plain convergent nozzle can reach at most at a high pressure ratio.
+  double momentum_velocity = 0.0;
+  double mass_flow = 0.0;  ///< kg/s, all nozzles
 };
 
 NozzleFlow nozzle_flow(const solver::Gas& gas, const Supply& supply, const Nozzle& nozzle,
