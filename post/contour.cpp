@@ -20,7 +20,9 @@ using Edge = std::array<int, 2>;
 
 /// Edges that two parts share run both ways and cancel; what is left bounds the whole.
 std::vector<Edge> without_shared(std::vector<Edge> edges) {
-  const auto undirected = [](const Edge& e) { return Edge{std::min(e[0], e[1]), std::max(e[0], e[1])}; };
+  const auto undirected = [](const Edge& e) {
+    return Edge{std::min(e[0], e[1]), std::max(e[0], e[1])};
+  };
   std::sort(edges.begin(), edges.end(), [&](const Edge& a, const Edge& b) {
     return std::pair(undirected(a), a) < std::pair(undirected(b), b);
   });
@@ -48,7 +50,9 @@ std::vector<std::vector<int>> chains(std::vector<Edge> edges) {
   std::vector<char> used(edges.size(), 0);
   const auto next_from = [&](int point) {
     auto it = std::lower_bound(edges.begin(), edges.end(), Edge{point, -1});
-    while (it != edges.end() && (*it)[0] == point && used[static_cast<std::size_t>(it - edges.begin())]) ++it;
+    while (it != edges.end() && (*it)[0] == point &&
+           used[static_cast<std::size_t>(it - edges.begin())])
+      ++it;
     return it != edges.end() && (*it)[0] == point ? it - edges.begin() : std::ptrdiff_t{-1};
   };
   std::vector<std::vector<int>> out;

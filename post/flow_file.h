@@ -29,7 +29,8 @@ struct FlowField {
 };
 void write_flow_file(const FlowField& field, const std::string& path);
 
-/// One field of a collection: `value` orders them (rotor speed, say); `file` is relative to the .pvd.
+/// One field of a collection: `value` orders them (rotor speed, say); `file` is relative to the
+/// .pvd.
 struct CollectionEntry {
   double value = 0.0;
   std::string file;
