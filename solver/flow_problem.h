@@ -1,9 +1,11 @@
 /// What is solved: one periodic passage with its in- and outflow, SI units.
 /// Angles are from the plane of rotation (y axis), radians, 0 to pi: u = w sin(angle), v = w cos(angle).
 #pragma once
+#include <functional>
 #include <optional>
 
 #include "mesh/passage_mesh.h"
+#include "solver/flow_solution.h"
 #include "solver/gas.h"
 
 namespace falcate::solver {
@@ -23,6 +25,8 @@ struct FlowProblem {
   Gas gas;
   InletCondition inlet;
   double exit_pressure = 0.0;      ///< Pa, static, mixed out
+  /// State on `prescribed` patches; needed only where the mesh has one.
+  std::function<Primitive(const mesh::Point&)> prescribed;
 };
 
 }  // namespace falcate::solver

@@ -1,16 +1,25 @@
 /// Steady flow of one passage by pseudo-transient Newton-Krylov with exact linearisation.
+///
+/// Each step solves (V M / dt + dR/dq) dq = -R, M = dU/dq, dt = CFL V / sum of face wave speeds, by
+/// GMRES preconditioned with block ILU(0) of the same matrix; CFL grows as the residual falls, so
+/// the last steps are Newton's own.
+/// Sources: Kelley & Keyes, SIAM J. Numer. Anal. 35(2) (1998) 508-523 (pseudo-transient
+/// continuation); Knoll & Keyes, J. Comput. Phys. 193 (2004) 357-397.
+/// Limits: ideal gas, inviscid. Throws std::invalid_argument when the problem is not one.
 #pragma once
 #include <functional>
 
 #include "solver/flow_problem.h"
 #include "solver/flow_solution.h"
+#include "solver/residual.h"
 
 namespace falcate::solver {
 
 struct SteadyOptions {
-  double residual_drop = 1e-10;  ///< stop when |R| <= residual_drop * |R_first|
-  int max_steps = 200;           ///< Newton steps
-  double initial_cfl = 5.0;
+  double residual_drop = 1e-11;  ///< stop when |R| <= residual_drop * |R of the cold start|
+  int max_steps = 150;           ///< Newton steps
+  double initial_cfl = 10.0;
+  SchemeOptions scheme;
 };
 
 /// Called after every step; only the command line prints.

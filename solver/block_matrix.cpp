@@ -1,0 +1,42 @@
+#include "solver/block_matrix.h"
+
+#include <algorithm>
+#include <cassert>
+
+namespace falcate::solver {
+
+BlockMatrix::BlockMatrix(const std::vector<std::vector<int>>& pattern) {
+  start_.push_back(0);
+  for (std::size_t row = 0; row < pattern.size(); ++row) {
+    columns_.insert(columns_.end(), pattern[row].begin(), pattern[row].end());
+    start_.push_back(columns_.size());
+  }
+  for (int row = 0; row < rows(); ++row) diagonal_.push_back(place(row, row));
+  blocks_.resize(columns_.size());
+  set_zero();
+}
+
+std::size_t BlockMatrix::place(int row, int column) const {
+  const auto first = columns_.begin() + static_cast<std::ptrdiff_t>(begin(row));
+  const auto last = columns_.begin() + static_cast<std::ptrdiff_t>(end(row));
+  const auto found = std::lower_bound(first, last, column);
+  assert(found != last && *found == column);
+  return static_cast<std::size_t>(found - columns_.begin());
+}
+
+void BlockMatrix::set_zero() {
+  for (auto& block : blocks_) block.setZero();
+}
+
+void BlockMatrix::multiply(const Vector& x, Vector& y) const {
+  y.resize(x.size());
+#pragma omp parallel for schedule(static)
+  for (int row = 0; row < rows(); ++row) {
+    Eigen::Vector4d sum = Eigen::Vector4d::Zero();
+    for (std::size_t k = begin(row); k < end(row); ++k)
+      sum.noalias() += blocks_[k] * x.segment<4>(4 * columns_[k]);
+    y.segment<4>(4 * row) = sum;
+  }
+}
+
+}  // namespace falcate::solver

@@ -1,0 +1,142 @@
+/// Inflow plane: what the stream brings is set, what the blade row sends back is let out.
+///
+/// Entropy and total enthalpy are those of the supply at every face. Then, by regime:
+/// - subsonic: the tangential velocity is v_mean + dv. dv follows from the outgoing pressure wave
+///   c4 = p - rho a u by the steady non-reflecting condition of each pitchwise harmonic,
+///   rho a dv = -((beta + v)/(1 + u)) c4, beta = i sgn(l) sqrt(1 - M^2) (u, v in units of a);
+///   the outgoing invariant u - 2a/(gamma-1) is the cell's; v_mean gives the momentum of the
+///   stream the set angle.
+/// - supersonic with subsonic axial part: |theta| + nu(M), theta from axial, comes in with the
+///   stream; |theta| - nu(M) leaves with the waves of the blades (unique incidence stays free).
+/// - axial part supersonic: the full given state.
+/// Inside units of the solver: total density and pressure 1.
+/// Sources: Giles, AIAA J. 28(12) (1990) 2050-2058; Saxer & Giles, J. Propulsion 9(2) (1993)
+/// 263-268 (uniform entropy and enthalpy);
+/// simple waves: Ames Research Staff, NACA Report 1135 (1953).
+#pragma once
+#include <span>
+#include <vector>
+
+#include "solver/plane_waves.h"
+#include "solver/prandtl_meyer.h"
+#include "solver/state.h"
+
+namespace falcate::solver {
+
+enum class InletRegime { subsonic, simple_wave, axially_supersonic };
+
+struct InletStream {
+  double gamma = 1.4;
+  InletRegime regime = InletRegime::subsonic;
+  double cotangent = 0.0;         ///< of the set angle: v / u
+  double simple_wave = 0.0;       ///< |theta| + nu, rad
+  State<double> given{};          ///< full state, where one is given
+  /// Mean state about which waves are taken apart: u, v in units of a; rho a; sqrt(1 - M^2).
+  double u = 0.0, v = 0.0, impedance = 1.0, beta = 1.0;
+};
+
+namespace inlet_detail {
+
+/// State at total pressure and density 1 from v and the outgoing invariant J = u - 2a/(gamma-1).
+template <class T>
+State<T> from_invariant(const T& j, const T& v, double gamma) {
+  using std::pow;
+  using std::sqrt;
+  const double k = 2.0 / (gamma - 1.0), h = gamma / (gamma - 1.0);
+  const double second = 1.0 / (gamma - 1.0) + 0.5 * k * k;
+  const T first = k * j, zeroth = 0.5 * (j * j + v * v) - h;
+  const T inside = larger(T(first * first - 4.0 * second * zeroth), T(1e-12));
+  const T a = (sqrt(inside) - first) / (2.0 * second);
+  const T rho = pow(T(a * a / gamma), 1.0 / (gamma - 1.0));
+  return {rho, j + k * a, v, rho * a * a / gamma};
+}
+
+template <class T>
+State<T> simple_wave_state(const State<T>& cell, const InletStream& s) {
+  using std::atan2;
+  using std::cos;
+  using std::pow;
+  using std::sin;
+  using std::sqrt;
+  const double g = s.gamma, side = s.cotangent < 0.0 ? -1.0 : 1.0;
+  const T a = speed_of_sound(cell, g);
+  const T m2 = (cell[1] * cell[1] + cell[2] * cell[2]) / (a * a);
+  const T theta = side * atan2(cell[2], cell[1]);
+  const T outgoing = theta - prandtl_meyer(m2, g);
+  const T nu = larger(T(0.5 * (s.simple_wave - outgoing)), T(1e-6));
+  const T turned = 0.5 * (s.simple_wave + outgoing);
+  const T mach2 = mach_squared_from_prandtl_meyer(nu, g);
+  const T temperature = 1.0 / (1.0 + 0.5 * (g - 1.0) * mach2);
+  const T rho = pow(temperature, 1.0 / (g - 1.0));
+  const T w = sqrt(mach2 * g * temperature);
+  return {rho, w * cos(turned), side * w * sin(turned), rho * temperature};
+}
+
+/// Momentum error of the set angle: sum of weight * rho u (v - u cot) over the plane.
+template <class T>
+T angle_error(std::span<const T> j, std::span<const T> dv, const T& mean, const InletStream& s,
+              const PlaneWaves& waves) {
+  T sum(0.0);
+  for (std::size_t i = 0; i < j.size(); ++i) {
+    const State<T> q = from_invariant(j[i], T(mean + dv[i]), s.gamma);
+    sum += waves.weight(i) * q[density] * q[1] * (q[2] - q[1] * s.cotangent);
+  }
+  return sum;
+}
+
+/// v_mean by Newton's method on values, with a last step on T, which carries exact derivatives.
+template <class T>
+T mean_tangential(std::span<const T> j, std::span<const T> dv, const InletStream& s,
+                  const PlaneWaves& waves, double start) {
+  std::vector<Dual<1>> jv, dvv;
+  for (std::size_t i = 0; i < j.size(); ++i) {
+    jv.emplace_back(value_of(j[i]));
+    dvv.emplace_back(value_of(dv[i]));
+  }
+  double mean = start, slope = 1.0;
+  for (int step = 0; step < 50; ++step) {
+    const auto error =
+        angle_error<Dual<1>>(jv, dvv, Dual<1>::seeded(mean, 0), s, waves);
+    slope = error.derivative[0];
+    const double change = error.value / slope;
+    mean -= change;
+    if (std::abs(change) <= 1e-15) break;
+  }
+  return T(mean) - angle_error<T>(j, dv, T(mean), s, waves) / slope;
+}
+
+template <class T>
+void subsonic(std::span<const State<T>> cells, const InletStream& s, const PlaneWaves& waves,
+              std::span<State<T>> boundary) {
+  const std::size_t n = cells.size();
+  std::vector<T> c4(n), j(n), dv(n);
+  for (std::size_t i = 0; i < n; ++i) {
+    c4[i] = cells[i][pressure] - s.impedance * cells[i][velocity_x];
+    j[i] = cells[i][velocity_x] - 2.0 / (s.gamma - 1.0) * speed_of_sound(cells[i], s.gamma);
+  }
+  const T mean_c4 = waves.mean<T>(c4);
+  const double scale = 1.0 / ((1.0 + s.u) * s.impedance);
+  for (std::size_t i = 0; i < n; ++i)
+    dv[i] = scale * (s.beta * waves.hilbert<T>(c4, i) -
+                     (waves.periodic() ? s.v : 0.0) * (c4[i] - mean_c4));
+  const T mean = mean_tangential<T>(j, dv, s, waves, value_of(cells[0][velocity_x]) * s.cotangent);
+  for (std::size_t i = 0; i < n; ++i) boundary[i] = from_invariant(j[i], T(mean + dv[i]), s.gamma);
+}
+
+}  // namespace inlet_detail
+
+/// States at the faces of the plane from those of the adjoining cells.
+template <class T>
+void inlet_states(std::span<const State<T>> cells, const InletStream& s, const PlaneWaves& waves,
+                  std::span<State<T>> boundary) {
+  if (s.regime == InletRegime::subsonic) return inlet_detail::subsonic(cells, s, waves, boundary);
+  for (std::size_t i = 0; i < cells.size(); ++i) {
+    if (s.regime == InletRegime::simple_wave) {
+      boundary[i] = inlet_detail::simple_wave_state(cells[i], s);
+    } else {
+      for (std::size_t k = 0; k < 4; ++k) boundary[i][k] = T(s.given[k]);
+    }
+  }
+}
+
+}  // namespace falcate::solver
