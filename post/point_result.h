@@ -45,6 +45,7 @@ struct FigureRow {
 };
 const std::vector<FigureRow>& figure_rows();
 double figure_value(const FigureRow& row, const PassageFigures& figures);
+double& figure_value(const FigureRow& row, PassageFigures& figures);
 
 /// Surface distribution of one side, in the order of arc length from the leading edge.
 struct SurfacePoint {
