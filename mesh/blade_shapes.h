@@ -27,16 +27,19 @@ struct CupParameters {
   double inlet_angle = 0.0;
   double exit_angle = 0.0;
   double wall_thickness = 0.0;
-  double edge_radius = 0.0;    ///< at most half the wall; 0: half the wall
+  double edge_radius = 0.0;  ///< at most half the wall; 0: half the wall
 };
 BladeOutline cup_blade(const CupParameters& parameters);
 
 /// Any closed outline from a CSV file (columns x,y or side,x,y; '#' comments), scaled to `width`;
 /// kept exactly: a spline through the points between corners; sharp, cusped and blunt edges.
-/// Messages name the file and, where one is at fault, the line.
+/// The scale is the axial extent of the whole outline, round edges included; y is not turned over:
+/// the convex side must lie towards +y already (ShapeError otherwise). mesh/outline_file.h has the
+/// format. Messages name the file and, where one is at fault, the line.
 BladeOutline coordinates_blade(const std::string& csv_file, double width);
 
-/// Least distance between the blade and its neighbour one pitch away (the throat), m; <= 0: they touch.
+/// Least distance between the blade and its neighbour one pitch away (the throat), m; <= 0: they
+/// touch.
 double throat_width(const BladeOutline& outline, double pitch);
 
 }  // namespace falcate::mesh

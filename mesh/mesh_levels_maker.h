@@ -7,10 +7,10 @@
 namespace falcate::mesh {
 
 struct MeshOptions {
-  int cells = 8000;             ///< finest level, roughly (within 15 %)
-  int levels = 3;               ///< each cell split in four, new wall nodes on the true curve
-  double upstream = 1.0;        ///< distance of the inlet plane from the leading edge, widths
-  double downstream = 1.0;      ///< distance of the outlet plane from the trailing edge, widths
+  int cells = 8000;         ///< finest level, roughly (within 15 %)
+  int levels = 3;           ///< each cell split in four, new wall nodes on the true curve
+  double upstream = 1.0;    ///< distance of the inlet plane from the leading edge, widths
+  double downstream = 1.0;  ///< distance of the outlet plane from the trailing edge, widths
   double time_limit_s = 60.0;
 };
 

@@ -24,7 +24,8 @@ class MeshError : public std::runtime_error {
 };
 
 /// What a boundary face lies on. `suction_wall` and `pressure_wall` are the convex and concave
-/// sides of the blade; `wall` any other slip wall; `prescribed` carries a given state (verification).
+/// sides of the blade; `wall` any other slip wall; `prescribed` carries a given state
+/// (verification).
 enum class PatchKind { suction_wall, pressure_wall, wall, inlet, outlet, prescribed };
 
 constexpr bool is_wall(PatchKind kind) {
@@ -37,13 +38,13 @@ struct RawMesh {
   struct BoundaryEdge {
     int first, second;  ///< node indices, either order
     PatchKind kind;
-    Point midpoint;     ///< on the true curve (chord midpoint on a straight boundary)
+    Point midpoint;  ///< on the true curve (chord midpoint on a straight boundary)
   };
-  double pitch = 0.0;                           ///< 0: not periodic
+  double pitch = 0.0;  ///< 0: not periodic
   std::vector<Point> nodes;
-  std::vector<std::array<int, 4>> cells;        ///< counter-clockwise; a triangle ends with -1
+  std::vector<std::array<int, 4>> cells;  ///< counter-clockwise; a triangle ends with -1
   std::vector<BoundaryEdge> boundary;
-  std::vector<std::array<int, 2>> periodic;     ///< node pairs {lower, upper = lower + pitch}
+  std::vector<std::array<int, 2>> periodic;  ///< node pairs {lower, upper = lower + pitch}
 };
 
 class PassageMesh {
@@ -89,8 +90,8 @@ class PassageMesh {
   std::vector<int> raw_index_;
 };
 
-/// Nested meshes, coarse first; `parent[k][cell]` is the cell of level k-1 that holds cell of level k
-/// (parent[0] is empty).
+/// Nested meshes, coarse first; `parent[k][cell]` is the cell of level k-1 that holds cell of level
+/// k (parent[0] is empty).
 struct MeshLevels {
   std::vector<PassageMesh> levels;
   std::vector<std::vector<int>> parent;
