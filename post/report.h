@@ -23,16 +23,16 @@ struct PictureField {
 
 struct ReportInput {
   std::string title, version;
-  std::string case_text;                                       ///< the case file as given
-  std::vector<std::pair<std::string, std::string>> derived;    ///< label, value: as `check` prints
+  std::string case_text;                                     ///< the case file as given
+  std::vector<std::pair<std::string, std::string>> derived;  ///< label, value: as `check` prints
   std::vector<std::string> cautions;
   double heat_capacity_ratio = 1.4, gas_constant = 287.05;
-  double pitch = 0.0;                                          ///< m
-  std::vector<mesh::Point> blade;                              ///< closed polygon
-  std::vector<VelocityTriangle> triangles;                     ///< one a point; empty for a rig
+  double pitch = 0.0;                       ///< m
+  std::vector<mesh::Point> blade;           ///< closed polygon
+  std::vector<VelocityTriangle> triangles;  ///< one a point; empty for a rig
   std::vector<PointResult> points;
   std::optional<SpeedLine> speed_line;
-  std::vector<PictureField> pictures;                          ///< first: the point shown large
+  std::vector<PictureField> pictures;  ///< first: the point shown large
 };
 
 void write_report(const ReportInput& input, const std::string& path);
