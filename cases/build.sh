@@ -34,6 +34,7 @@ build_falcate() {
   done
   (($#)) && shift
   if command -v ccache >/dev/null; then
+    export CCACHE_BASEDIR=$root  # one clone profits from what another has compiled
     options+=(-DCMAKE_CXX_COMPILER_LAUNCHER=ccache)
   fi
   say "Building in $folder"
