@@ -3,10 +3,10 @@
 /// The blade is an arch that bulges to +y: the suction (convex) side lies on top, the pressure
 /// (concave) side below. Leading edge towards -x (inflow), trailing edge towards +x; x runs from 0
 /// to `width()`. Both sides start at the leading-edge nose and end at the trailing-edge nose (the
-/// points of least and greatest x on a rounded edge, the corner on a sharp or cusped one, the middle
-/// of the cut on a blunt one).
-/// A side is a chain of exact pieces (line, arc, spline); `point(s)` is on the true curve.
-/// Units: metres, radians from the plane of rotation (y axis): direction = (sin a, cos a).
+/// points of least and greatest x on a rounded edge, the corner on a sharp or cusped one, the
+/// middle of the cut on a blunt one). A side is a chain of exact pieces (line, arc, spline);
+/// `point(s)` is on the true curve. Units: metres, radians from the plane of rotation (y axis):
+/// direction = (sin a, cos a).
 #pragma once
 #include <functional>
 #include <stdexcept>
