@@ -21,27 +21,29 @@ struct PassageFigures {
   StreamState inlet, exit;
   double turning_deg = 0.0;
   double mass_flow_kg_s_m = 0.0;
-  double tangential_force_n_m = 0.0, axial_force_n_m = 0.0;   ///< pressure integral over the blade, gas on blade
-  double momentum_tangential_n_m = 0.0, momentum_axial_n_m = 0.0;  ///< same from the in- and outflow
-  double mass_imbalance = 0.0;        ///< (in - out) / in
-  double total_pressure_loss = 0.0;   ///< (p01 - p02) / (p01 - p2)
+  double tangential_force_n_m = 0.0,
+         axial_force_n_m = 0.0;  ///< pressure integral over the blade, gas on blade
+  double momentum_tangential_n_m = 0.0,
+         momentum_axial_n_m = 0.0;   ///< same from the in- and outflow
+  double mass_imbalance = 0.0;       ///< (in - out) / in
+  double total_pressure_loss = 0.0;  ///< (p01 - p02) / (p01 - p2)
   double absolute_exit_velocity_m_s = 0.0;
-  double capacity_ratio = 0.0;        ///< flow swallowed / flow offered; 0 for a rig
-  double blade_efficiency = 0.0, wheel_efficiency = 0.0;   ///< 0 for a rig
-  double tangential_force_n = 0.0, axial_force_n = 0.0;    ///< all loaded blades; 0 for a rig
-  double torque_n_m = 0.0, power_w = 0.0;                  ///< wheel; 0 for a rig
+  double capacity_ratio = 0.0;  ///< flow swallowed / flow offered; 0 for a rig
+  double blade_efficiency = 0.0, wheel_efficiency = 0.0;  ///< 0 for a rig
+  double tangential_force_n = 0.0, axial_force_n = 0.0;   ///< all loaded blades; 0 for a rig
+  double torque_n_m = 0.0, power_w = 0.0;                 ///< wheel; 0 for a rig
 };
 
 /// One row a figure: drives the result files, the error bars, the report's table and the tests.
 struct FigureRow {
-  const char* group;      ///< object in results.json ("" = the point itself)
-  const char* key;        ///< with its unit
-  const char* title;      ///< plain words for people
-  const char* unit;       ///< for people
+  const char* group;  ///< object in results.json ("" = the point itself)
+  const char* key;    ///< with its unit
+  const char* title;  ///< plain words for people
+  const char* unit;   ///< for people
   bool wheel_only;
-  double PassageFigures::* value;      ///< null where the figure sits in a stream state
-  StreamState PassageFigures::* stream;
-  double StreamState::* stream_value;
+  double PassageFigures::*value;  ///< null where the figure sits in a stream state
+  StreamState PassageFigures::*stream;
+  double StreamState::*stream_value;
 };
 const std::vector<FigureRow>& figure_rows();
 double figure_value(const FigureRow& row, const PassageFigures& figures);
@@ -57,14 +59,14 @@ struct PointResult {
   std::string id, shape;
   bool wheel = false;
   double speed_rpm = 0.0, blade_speed_m_s = 0.0, speed_ratio = 0.0;
-  PassageFigures figures;             ///< finest mesh
-  PassageFigures numerical_error;     ///< half-width of the error bar, figure by figure
+  PassageFigures figures;          ///< finest mesh
+  PassageFigures numerical_error;  ///< half-width of the error bar, figure by figure
   std::vector<SurfacePoint> suction, pressure;
-  solver::SteadySummary solution;     ///< finest mesh
+  solver::SteadySummary solution;  ///< finest mesh
   int cells = 0;
-  double seconds = 0.0;               ///< all levels
-  std::string failure;                ///< plain words; empty if the point stands
-  std::vector<std::string> remarks;   ///< plain sentences (choked, not started, ...)
+  double seconds = 0.0;              ///< all levels
+  std::string failure;               ///< plain words; empty if the point stands
+  std::vector<std::string> remarks;  ///< plain sentences (choked, not started, ...)
 };
 
 }  // namespace falcate::post

@@ -1,4 +1,4 @@
-/// results.json and results.csv, and the record of one point from which a run goes on.
+/// results.json and results.csv: every figure of every point with its numerical error.
 /// SI units with the unit in the key; key order fixed; a number that is not finite is null (empty
 /// in the table). The figures come from figure_rows(). Files appear whole (post/whole_file.h).
 /// Errors: `OutputError` when a file cannot be written, read or understood.
@@ -7,6 +7,7 @@
 #include <vector>
 
 #include "post/output_error.h"
+#include "post/point_record.h"
 #include "post/point_result.h"
 
 namespace falcate::post {
@@ -19,13 +20,8 @@ struct Results {
 void write_results_json(const Results& results, const std::string& path);
 /// One line a point; the columns are group_key, errors as group_key_error.
 void write_results_csv(const Results& results, const std::string& path);
-/// Everything results.json holds; surface distributions and convergence history are in the records.
+/// Everything results.json holds; surface distributions and convergence history
+/// are in the records (post/point_record.h).
 Results read_results_json(const std::string& path);
-
-/// The whole PointResult, every bit of every number kept.
-void write_point_record(const PointResult& point, const std::string& path);
-PointResult read_point_record(const std::string& path);
-
-const char* status_words(solver::SolutionStatus status);  ///< steady, averaged, failed
 
 }  // namespace falcate::post
