@@ -38,6 +38,6 @@ build_falcate() {
     options+=(-DCMAKE_CXX_COMPILER_LAUNCHER=ccache)
   fi
   say "Building in $folder"
-  cmake -S "$root" -B "$folder" -G Ninja -DCMAKE_BUILD_TYPE=Release "${options[@]}"
-  cmake --build "$folder" ${1:+--target "$@"}
+  cmake -S "$root" -B "$folder" -G Ninja -DCMAKE_BUILD_TYPE=Release "${options[@]}" &&
+    cmake --build "$folder" ${1:+--target "$@"}
 }
