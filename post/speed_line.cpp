@@ -77,8 +77,8 @@ void set_runaway(SpeedLine& line) {
     return;
   }
   if (n < 2 || !(torque[n - 1] > 0.0)) return;
-  // The last slope, or that of the whole line where it is steeper seen from farther: the flatter
-  // one gives the higher, hence the safer, runaway speed.
+  // The flatter of the last slope and that of the whole line: it gives the higher, hence the safer,
+  // runaway speed.
   const double last = (torque[n - 1] - torque[n - 2]) / (speed[n - 1] - speed[n - 2]);
   const double whole = (torque[n - 1] - torque[0]) / (speed[n - 1] - speed[0]);
   const double slope = std::max(last, whole);
