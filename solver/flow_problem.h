@@ -1,5 +1,6 @@
 /// What is solved: one periodic passage with its in- and outflow, SI units.
-/// Angles are from the plane of rotation (y axis), radians, 0 to pi: u = w sin(angle), v = w cos(angle).
+/// Angles are from the plane of rotation (y axis), radians, 0 to pi: u = w sin(angle), v = w
+/// cos(angle).
 #pragma once
 #include <functional>
 #include <optional>
@@ -24,7 +25,7 @@ struct FlowProblem {
   const mesh::PassageMesh* mesh = nullptr;
   Gas gas;
   InletCondition inlet;
-  double exit_pressure = 0.0;      ///< Pa, static, mixed out
+  double exit_pressure = 0.0;  ///< Pa, static, mixed out
   /// State on `prescribed` patches; needed only where the mesh has one.
   std::function<Primitive(const mesh::Point&)> prescribed;
 };

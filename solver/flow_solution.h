@@ -32,18 +32,18 @@ struct ConvergencePoint {
 /// Options in, summary out: why the solve stopped, counts, time.
 struct SteadySummary {
   SolutionStatus status = SolutionStatus::failed;
-  std::string reason;              ///< plain words
-  double residual_drop = 1.0;      ///< last / first residual norm
+  std::string reason;          ///< plain words
+  double residual_drop = 1.0;  ///< last / first residual norm
   int newton_steps = 0;
   long krylov_iterations = 0;
-  long residual_evaluations = 0;   ///< Jacobian-vector products count as two
+  long residual_evaluations = 0;  ///< Jacobian-vector products count as two
   double seconds = 0.0;
   std::vector<ConvergencePoint> history;
 };
 
 struct FlowSolution {
-  std::vector<Primitive> cells;             ///< one a cell of the mesh
-  std::vector<BoundaryFlux> boundary;       ///< one a boundary face, face interior_face_count() first
+  std::vector<Primitive> cells;        ///< one a cell of the mesh
+  std::vector<BoundaryFlux> boundary;  ///< one a boundary face, face interior_face_count() first
   SteadySummary summary;
 };
 

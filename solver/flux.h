@@ -70,8 +70,7 @@ State<T> slau2_flux(const State<T>& l, const State<T>& r, const mesh::Point& n, 
   const T low = 1.0 - smaller(T(1.0), speed / a);
   const T chi = low * low;
   const T g = clipped_unit(-ml) * clipped_unit(mr);
-  const T mean =
-      (l[density] * abs(wl) + r[density] * abs(wr)) / (l[density] + r[density]);
+  const T mean = (l[density] * abs(wl) + r[density] * abs(wr)) / (l[density] + r[density]);
   const T mean_l = (1.0 - g) * mean + g * abs(wl), mean_r = (1.0 - g) * mean + g * abs(wr);
   const T mass = 0.5 * (l[density] * (wl + mean_l) + r[density] * (wr - mean_r) -
                         chi / a * (r[pressure] - l[pressure]));

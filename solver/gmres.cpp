@@ -24,7 +24,8 @@ struct Rotation {
 /// One Arnoldi cycle; adds its correction to x and returns the number of iterations spent.
 class Cycle {
  public:
-  Cycle(const LinearMap& multiply, const LinearMap& precondition, const Vector& residual, int length)
+  Cycle(const LinearMap& multiply, const LinearMap& precondition, const Vector& residual,
+        int length)
       : multiply_(multiply), precondition_(precondition), length_(length) {
     const double beta = residual.norm();
     basis_.push_back(residual / beta);
@@ -65,7 +66,8 @@ class Cycle {
 
   void correct(int k, Vector& x) {
     if (k == 0) return;
-    const Vector y = hessenberg_.topLeftCorner(k, k).triangularView<Eigen::Upper>().solve(rhs_.head(k));
+    const Vector y =
+        hessenberg_.topLeftCorner(k, k).triangularView<Eigen::Upper>().solve(rhs_.head(k));
     Vector sum = Vector::Zero(x.size()), step;
     for (int i = 0; i < k; ++i) sum += y(i) * basis_[static_cast<std::size_t>(i)];
     precondition_(sum, step);

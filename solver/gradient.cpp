@@ -26,7 +26,8 @@ struct LeastSquares {
   std::vector<mesh::Point> offset;
 };
 
-LeastSquares normal_equations(const mesh::PassageMesh& mesh, int cell, const std::vector<Link>& links) {
+LeastSquares normal_equations(const mesh::PassageMesh& mesh, int cell,
+                              const std::vector<Link>& links) {
   LeastSquares ls;
   const auto& centroid = mesh.centroids();
   for (const auto& link : links) {
@@ -66,14 +67,13 @@ GradientStencil::GradientStencil(const mesh::PassageMesh& mesh) {
   for (int cell = 0; cell < mesh.cell_count(); ++cell) {
     auto stencil = links[static_cast<std::size_t>(cell)];
     auto ls = normal_equations(mesh, cell, stencil);
-    if (stencil.size() < 3 || !fans_out(ls.matrix)) {
+    if (stencil.size() < 4 || !fans_out(ls.matrix)) {
       stencil = widened(cell, links);
       ls = normal_equations(mesh, cell, stencil);
     }
     const Eigen::Matrix2d inverse = ls.matrix.inverse();
     for (std::size_t k = 0; k < stencil.size(); ++k)
-      neighbours_.push_back(
-          {stencil[k].cell, inverse * ls.offset[k] / ls.offset[k].squaredNorm()});
+      neighbours_.push_back({stencil[k].cell, inverse * ls.offset[k] / ls.offset[k].squaredNorm()});
     start_.push_back(neighbours_.size());
   }
 }

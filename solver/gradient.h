@@ -1,7 +1,9 @@
 /// Weighted least-squares gradients: grad q_i = sum_j w_ij (q_j - q_i) over the stencil of cell i,
 /// exact on linear fields. Weights 1/distance^2. Stencil: the face neighbours (periodic images
-/// included); where these are too few or nearly in line, their neighbours as well.
-/// Source: Barth, AGARD R-787 (1992), sec. 4; Mavriplis, AIAA 2003-3986.
+/// included); where these are fewer than four (triangles, boundary cells) or nearly in line, their
+/// neighbours as well: with three alone second-order schemes on triangles are unstable.
+/// Sources: Barth, AGARD R-787 (1992), sec. 4; Haider, Croisille & Courbet, Numer. Math. 113 (2009)
+/// 555-600 (stability).
 #pragma once
 #include <span>
 #include <vector>

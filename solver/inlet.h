@@ -28,9 +28,9 @@ enum class InletRegime { subsonic, simple_wave, axially_supersonic };
 struct InletStream {
   double gamma = 1.4;
   InletRegime regime = InletRegime::subsonic;
-  double cotangent = 0.0;         ///< of the set angle: v / u
-  double simple_wave = 0.0;       ///< |theta| + nu, rad
-  State<double> given{};          ///< full state, where one is given
+  double cotangent = 0.0;    ///< of the set angle: v / u
+  double simple_wave = 0.0;  ///< |theta| + nu, rad
+  State<double> given{};     ///< full state, where one is given
   /// Mean state about which waves are taken apart: u, v in units of a; rho a; sqrt(1 - M^2).
   double u = 0.0, v = 0.0, impedance = 1.0, beta = 1.0;
 };
@@ -95,8 +95,7 @@ T mean_tangential(std::span<const T> j, std::span<const T> dv, const InletStream
   }
   double mean = start, slope = 1.0;
   for (int step = 0; step < 50; ++step) {
-    const auto error =
-        angle_error<Dual<1>>(jv, dvv, Dual<1>::seeded(mean, 0), s, waves);
+    const auto error = angle_error<Dual<1>>(jv, dvv, Dual<1>::seeded(mean, 0), s, waves);
     slope = error.derivative[0];
     const double change = error.value / slope;
     mean -= change;
@@ -117,8 +116,8 @@ void subsonic(std::span<const State<T>> cells, const InletStream& s, const Plane
   const T mean_c4 = waves.mean<T>(c4);
   const double scale = 1.0 / ((1.0 + s.u) * s.impedance);
   for (std::size_t i = 0; i < n; ++i)
-    dv[i] = scale * (s.beta * waves.hilbert<T>(c4, i) -
-                     (waves.periodic() ? s.v : 0.0) * (c4[i] - mean_c4));
+    dv[i] = scale *
+            (s.beta * waves.hilbert<T>(c4, i) - (waves.periodic() ? s.v : 0.0) * (c4[i] - mean_c4));
   const T mean = mean_tangential<T>(j, dv, s, waves, value_of(cells[0][velocity_x]) * s.cotangent);
   for (std::size_t i = 0; i < n; ++i) boundary[i] = from_invariant(j[i], T(mean + dv[i]), s.gamma);
 }

@@ -9,7 +9,8 @@ namespace {
 using mesh::Point;
 
 template <class Visit>
-void for_each_face(const mesh::PassageMesh& mesh, bool (*wanted)(mesh::PatchKind), const Visit& visit) {
+void for_each_face(const mesh::PassageMesh& mesh, bool (*wanted)(mesh::PatchKind),
+                   const Visit& visit) {
   for (const auto& patch : mesh.patches()) {
     if (!wanted(patch.kind)) continue;
     for (int i = patch.first_face; i < patch.first_face + patch.face_count; ++i)
@@ -73,7 +74,8 @@ State<Dual<4>> constant(const State<double>& q) {
 
 Block scaled_columns(const Block& block, const State<double>& factor) {
   Block out;
-  for (int col = 0; col < 4; ++col) out.col(col) = block.col(col) * factor[static_cast<std::size_t>(col)];
+  for (int col = 0; col < 4; ++col)
+    out.col(col) = block.col(col) * factor[static_cast<std::size_t>(col)];
   return out;
 }
 
@@ -194,15 +196,15 @@ void Jacobian::prescribed(std::span<const State<double>> cells,
     const Point& offset = residual_.geometry(f).offset;
     const auto inside = residual_.boundary_state<double>(f, cells, gradients);
     const auto boundary = f - static_cast<std::size_t>(residual_.mesh().interior_face_count());
-    const Block flux = block_of(numerical_flux(
-        residual_.options().flux, seeded(inside), constant(residual_.problem().prescribed[boundary]),
-        face.normal, residual_.problem().gamma));
+    const Block flux = block_of(numerical_flux(residual_.options().flux, seeded(inside),
+                                               constant(residual_.problem().prescribed[boundary]),
+                                               face.normal, residual_.problem().gamma));
     State<double> own, step;
     for (std::size_t k = 0; k < 4; ++k) {
       const bool positive = k == density || k == pressure;
-      const auto slopes = positive ? positive_step_slopes(cells[cell][k],
-                                                          gradients[cell].along(k, offset))
-                                   : std::array<double, 2>{1.0, 1.0};
+      const auto slopes =
+          positive ? positive_step_slopes(cells[cell][k], gradients[cell].along(k, offset))
+                   : std::array<double, 2>{1.0, 1.0};
       own[k] = slopes[0];
       step[k] = slopes[1];
     }

@@ -1,8 +1,8 @@
 /// Outflow plane with subsonic axial part: waves leave unreflected, the mixed-out pressure is set.
 ///
 /// Entropy, tangential velocity and the invariant u + 2a/(gamma-1) are the cell's. The pressure is
-/// P (1 + (c3 + c4)/2P): c2 = rho a v, c3 = p + rho a u, deviations from the pitchwise mean, and the
-/// incoming wave of each harmonic
+/// P (1 + (c3 + c4)/2P): c2 = rho a v, c3 = p + rho a u, deviations from the pitchwise mean, and
+/// the incoming wave of each harmonic
 ///   c4 = (2u/(beta - v)) c2 - ((beta + v)/(beta - v)) c3      (u, v in units of a),
 ///   beta = i sgn(l) sqrt(1 - M^2) below, -sgn(v) sqrt(M^2 - 1) above Mach 1.
 /// The level P is such that the uniform stream with the same mass, momentum and energy flow has the
@@ -42,8 +42,7 @@ inline WaveCoefficients wave_coefficients(const OutletStream& s) {
     return {2.0 * s.u / (beta - v), -(beta + v) / (beta - v)};
   }
   const double b = std::sqrt(1.0 - s.mach_squared), size = v * v + b * b;
-  return {-2.0 * s.u * v / size, (v * v - b * b) / size, 2.0 * s.u * b / size,
-          -2.0 * v * b / size};
+  return {-2.0 * s.u * v / size, (v * v - b * b) / size, 2.0 * s.u * b / size, -2.0 * v * b / size};
 }
 
 template <class T>

@@ -15,7 +15,7 @@ namespace falcate::solver {
 
 struct SchemeOptions {
   FluxKind flux = FluxKind::slau2;
-  double limiter_constant = 3.0;  ///< K of the limiter's threshold; larger: less limiting
+  double limiter_constant = 5.0;  ///< K of the limiter's threshold; larger: less limiting
 };
 
 /// d/dx and d/dy of the primitive variables.
@@ -85,7 +85,8 @@ class Residual {
     return {cell_faces_.data() + start_[cell], start_[cell + 1] - start_[cell]};
   }
 
-  /// Sum over the faces of (|w.n| + a |n|)/2: the cell's wave speed times length, for local time steps.
+  /// Sum over the faces of (|w.n| + a |n|)/2: the cell's wave speed times length, for local time
+  /// steps.
   std::vector<double> spectral_sums(std::span<const State<double>> cells) const;
 
  private:

@@ -189,7 +189,8 @@ std::vector<State<double>> cold_start(const FlowProblem& problem, const ScaledPr
   const double mach = problem.inlet.mach.value_or(exit_mach(problem));
   std::vector<State<double>> cells;
   for (const mesh::Point& x : mesh.centroids())
-    cells.push_back(isentropic_state(mach, direction.angle(x.x(), problem.inlet.angle), scaled.gamma));
+    cells.push_back(
+        isentropic_state(mach, direction.angle(x.x(), problem.inlet.angle), scaled.gamma));
   return cells;
 }
 

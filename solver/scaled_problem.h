@@ -1,5 +1,6 @@
-/// The problem in the solver's own units: density and pressure at rest at the inlet are 1, speeds in
-/// sqrt(p0/rho0); lengths stay in metres. Everything a residual needs that does not change with T.
+/// The problem in the solver's own units: density and pressure at rest at the inlet are 1, speeds
+/// in sqrt(p0/rho0); lengths stay in metres. Everything a residual needs that does not change with
+/// T.
 #pragma once
 #include <span>
 #include <vector>
@@ -21,7 +22,8 @@ struct Units {
     return {q[0] * density, q[1] * velocity, q[2] * velocity, q[3] * pressure};
   }
   BoundaryFlux physical_flux(const State<double>& f) const {
-    return {f[0] * density * velocity, f[1] * pressure, f[2] * pressure, f[3] * pressure * velocity};
+    return {f[0] * density * velocity, f[1] * pressure, f[2] * pressure,
+            f[3] * pressure * velocity};
   }
 };
 

@@ -47,10 +47,22 @@ State<T> conserved(const State<T>& q, double gamma) {
 /// Row-major derivative of the conserved with respect to the primitive variables.
 inline std::array<double, 16> conserved_by_primitive(const State<double>& q, double gamma) {
   const double u = q[velocity_x], v = q[velocity_y], rho = q[density];
-  return {1.0, 0.0, 0.0, 0.0,
-          u,   rho, 0.0, 0.0,
-          v,   0.0, rho, 0.0,
-          0.5 * (u * u + v * v), rho * u, rho * v, 1.0 / (gamma - 1.0)};
+  return {1.0,
+          0.0,
+          0.0,
+          0.0,
+          u,
+          rho,
+          0.0,
+          0.0,
+          v,
+          0.0,
+          rho,
+          0.0,
+          0.5 * (u * u + v * v),
+          rho * u,
+          rho * v,
+          1.0 / (gamma - 1.0)};
 }
 
 }  // namespace falcate::solver

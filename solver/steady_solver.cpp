@@ -100,8 +100,7 @@ class March {
     for (int i = 0; i < matrix.rows(); ++i) {
       const auto ui = static_cast<std::size_t>(i);
       const auto m = conserved_by_primitive(cells_[ui], problem_.gamma);
-      matrix.block(matrix.diagonal(i)) +=
-          speeds[ui] / cfl_ * Eigen::Map<const Block>(m.data());
+      matrix.block(matrix.diagonal(i)) += speeds[ui] / cfl_ * Eigen::Map<const Block>(m.data());
     }
   }
 
@@ -143,8 +142,8 @@ class March {
       if (std::isfinite(size_) && transient_size(before) <= growth_allowed * size_before) {
         const double fall = size_before / size_;
         const double growth = whole && halving == 0 ? std::clamp(fall, 1.5, 10.0)
-                              : halving == 0       ? 1.2
-                                                   : 0.7;
+                              : halving == 0        ? 1.2
+                                                    : 0.7;
         cfl_ = std::min(cfl_ * growth * (linear_.converged ? 1.0 : 0.5), greatest_cfl);
         return;
       }
@@ -159,7 +158,8 @@ class March {
     const auto speeds = residual_.spectral_sums(before);
     double sum = 0.0;
     for (std::size_t i = 0; i < cells_.size(); ++i) {
-      const auto u = conserved(cells_[i], problem_.gamma), old = conserved(before[i], problem_.gamma);
+      const auto u = conserved(cells_[i], problem_.gamma),
+                 old = conserved(before[i], problem_.gamma);
       for (std::size_t k = 0; k < 4; ++k) {
         const double r = speeds[i] / cfl_ * (u[k] - old[k]) + sums_[i][k];
         sum += r * r;
@@ -203,12 +203,12 @@ FlowSolution solve_steady(const FlowProblem& problem, const SteadyOptions& optio
   summary.reason = march.converged()   ? "residual at its target"
                    : march.exhausted() ? "no step lowers the residual any more"
                                        : "step limit reached before the residual target";
-  summary.seconds =
-      std::chrono::duration<double>(std::chrono::steady_clock::now() - began).count();
+  summary.seconds = std::chrono::duration<double>(std::chrono::steady_clock::now() - began).count();
   return solution;
 }
 
-std::vector<Primitive> prolong(const std::vector<Primitive>& coarse, const std::vector<int>& parent) {
+std::vector<Primitive> prolong(const std::vector<Primitive>& coarse,
+                               const std::vector<int>& parent) {
   std::vector<Primitive> fine;
   fine.reserve(parent.size());
   for (const int cell : parent) fine.push_back(coarse[static_cast<std::size_t>(cell)]);

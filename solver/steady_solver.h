@@ -30,6 +30,7 @@ FlowSolution solve_steady(const FlowProblem& problem, const SteadyOptions& optio
                           const std::vector<Primitive>& start, const Observer& observer = {});
 
 /// Cell states of a coarse level carried to the next finer one (injection through `parent`).
-std::vector<Primitive> prolong(const std::vector<Primitive>& coarse, const std::vector<int>& parent);
+std::vector<Primitive> prolong(const std::vector<Primitive>& coarse,
+                               const std::vector<int>& parent);
 
 }  // namespace falcate::solver

@@ -1,5 +1,5 @@
-// The assembled Jacobian against the residual's own derivative, taken by running the residual itself
-// on dual numbers: two independent ways through the chain rule, equal to round-off.
+// The assembled Jacobian against the residual's own derivative, taken by running the residual
+// itself on dual numbers: two independent ways through the chain rule, equal to round-off.
 #include "solver/jacobian.h"
 
 #include <gtest/gtest.h>
@@ -23,9 +23,9 @@ struct Setting {
   mesh::CellKind cells;
   bool periodic;
   std::array<PatchKind, 4> sides;
-  double angle;            ///< deg from the plane of rotation
-  double mach;             ///< of the flow
-  bool given;              ///< whether the inlet condition states the Mach number
+  double angle;  ///< deg from the plane of rotation
+  double mach;   ///< of the flow
+  bool given;    ///< whether the inlet condition states the Mach number
   FluxKind flux;
 };
 
@@ -33,12 +33,54 @@ const PatchKind in = PatchKind::inlet, out = PatchKind::outlet, wall = PatchKind
                 fixed = PatchKind::prescribed;
 
 const Setting settings[] = {
-    {"subsonic_periodic", mesh::CellKind::quads, true, {wall, out, wall, in}, 50, 0.4, false, FluxKind::slau2},
-    {"supersonic_periodic", mesh::CellKind::mixed, true, {wall, out, wall, in}, 25, 2.0, true, FluxKind::slau2},
-    {"downward_periodic", mesh::CellKind::quads, true, {wall, out, wall, in}, 150, 1.7, true, FluxKind::hllc},
-    {"axially_supersonic", mesh::CellKind::quads, true, {wall, out, wall, in}, 80, 2.0, true, FluxKind::roe},
-    {"channel", mesh::CellKind::triangles, false, {wall, out, wall, in}, 90, 0.3, false, FluxKind::slau2},
-    {"prescribed", mesh::CellKind::mixed, false, {fixed, fixed, wall, fixed}, 80, 0.8, false, FluxKind::hllc},
+    {"subsonic_periodic",
+     mesh::CellKind::quads,
+     true,
+     {wall, out, wall, in},
+     50,
+     0.4,
+     false,
+     FluxKind::slau2},
+    {"supersonic_periodic",
+     mesh::CellKind::mixed,
+     true,
+     {wall, out, wall, in},
+     25,
+     2.0,
+     true,
+     FluxKind::slau2},
+    {"downward_periodic",
+     mesh::CellKind::quads,
+     true,
+     {wall, out, wall, in},
+     150,
+     1.7,
+     true,
+     FluxKind::hllc},
+    {"axially_supersonic",
+     mesh::CellKind::quads,
+     true,
+     {wall, out, wall, in},
+     80,
+     2.0,
+     true,
+     FluxKind::roe},
+    {"channel",
+     mesh::CellKind::triangles,
+     false,
+     {wall, out, wall, in},
+     90,
+     0.3,
+     false,
+     FluxKind::slau2},
+    {"prescribed",
+     mesh::CellKind::mixed,
+     false,
+     {fixed, fixed, wall, fixed},
+     80,
+     0.8,
+     false,
+     FluxKind::hllc},
 };
 
 class JacobianOf : public testing::TestWithParam<Setting> {};

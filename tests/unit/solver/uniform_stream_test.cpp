@@ -19,8 +19,8 @@ struct Stream {
   double angle_deg, mach;
   bool given;
 };
-const Stream streams[] = {{"slow", 40, 0.1, false},       {"subsonic", 25, 0.7, false},
-                          {"falling", 150, 0.5, false},   {"simple_wave", 25, 2.0, true},
+const Stream streams[] = {{"slow", 40, 0.1, false},         {"subsonic", 25, 0.7, false},
+                          {"falling", 150, 0.5, false},     {"simple_wave", 25, 2.0, true},
                           {"falling_wave", 155, 1.8, true}, {"axially_supersonic", 70, 2.5, true}};
 
 State<double> state_of(const Stream& s, double gamma) {
@@ -64,10 +64,11 @@ class UniformStream : public testing::TestWithParam<Stream> {};
 
 TEST_P(UniformStream, StaysThroughInletAndOutlet) {
   for (const auto& method : flux_methods)
-    for (const auto kind : {mesh::CellKind::quads, mesh::CellKind::triangles, mesh::CellKind::mixed})
-      EXPECT_LT(worst_residual(GetParam(), kind, method.kind,
-                               {PatchKind::wall, PatchKind::outlet, PatchKind::wall, PatchKind::inlet},
-                               0.02),
+    for (const auto kind :
+         {mesh::CellKind::quads, mesh::CellKind::triangles, mesh::CellKind::mixed})
+      EXPECT_LT(worst_residual(
+                    GetParam(), kind, method.kind,
+                    {PatchKind::wall, PatchKind::outlet, PatchKind::wall, PatchKind::inlet}, 0.02),
                 1e-13)
           << method.name;
 }
@@ -87,9 +88,9 @@ INSTANTIATE_TEST_SUITE_P(Streams, UniformStream, testing::ValuesIn(streams),
 TEST(UniformStreamAtAWall, StaysAlongIt) {
   const double gamma = 1.4;
   const auto map = [](double xi, double eta) { return Point(xi, eta); };
-  const auto mesh = mesh::PassageMesh::build(
-      mesh::structured(8, 6, mesh::CellKind::mixed, map,
-                       {PatchKind::wall, PatchKind::outlet, PatchKind::wall, PatchKind::inlet}, 0.0, 0.2));
+  const auto mesh = mesh::PassageMesh::build(mesh::structured(
+      8, 6, mesh::CellKind::mixed, map,
+      {PatchKind::wall, PatchKind::outlet, PatchKind::wall, PatchKind::inlet}, 0.0, 0.2));
   const Stream along{"along", 90, 0.6, false};
   const auto q = state_of(along, gamma);
   FlowProblem problem;
