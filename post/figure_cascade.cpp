@@ -15,7 +15,7 @@
 namespace falcate::post {
 namespace {
 
-constexpr double plot_width = 470.0, margin = 34.0, greatest_height = 760.0;
+constexpr double margin = 34.0, greatest_slenderness = 1.6;
 
 struct Box {
   double x_least, x_greatest, y_least, y_greatest;
@@ -53,7 +53,7 @@ Stage make_stage(const CascadeView& view, const Box& window) {
   Stage stage{window, {}, 0.0, 0.0};
   const double across = window.x_greatest - window.x_least;
   const double along = window.y_greatest - window.y_least;
-  stage.view.scale = std::min(plot_width / across, greatest_height / along);
+  stage.view.scale = view.width * std::min(1.0 / across, greatest_slenderness / along);
   stage.width = across * stage.view.scale;
   stage.height = along * stage.view.scale;
   stage.view.left = window.x_least;
@@ -147,6 +147,17 @@ Levels make_levels(double least, double greatest) {
   return {first, step, bands};
 }
 
+/// As many decimals as the step needs, so that the numbers line up.
+std::string level_words(const Levels& levels, int i) {
+  if (levels.step == 0.0) return fmt::format("{:.4g}", levels.first);
+  int decimals = 0;
+  for (double step = levels.step; decimals < 9 && std::abs(step - std::round(step)) > 1e-6 * step;
+       step *= 10.0) {
+    ++decimals;
+  }
+  return fmt::format("{:.{}f}", levels.at(i) + 0.0, decimals);
+}
+
 std::string colour_bar(const Stage& stage, const Levels& levels, const std::string& title) {
   const double x = stage.view.x0 + stage.width + 16.0, width = 18.0;
   const double height = std::min(stage.height - 12.0, 420.0);
@@ -165,14 +176,8 @@ std::string colour_bar(const Stage& stage, const Levels& levels, const std::stri
       x, top, width, height, svg::ink);
   for (int i = 0; i <= levels.bands; i += every) {
     const double y = top + height - i * band;
-    // A multiple of the step lies within round-off of a short number; %g prints that one.
-    out +=
-        svg::line(x + width, y, x + width + 4, y, fmt::format("stroke=\"{}\"", svg::ink)) +
-        svg::text(x + width + 8, y + 5,
-                  fmt::format("{:.5g}", levels.step > 0.0
-                                            ? std::round(levels.at(i) / levels.step) * levels.step
-                                            : levels.first),
-                  "start");
+    out += svg::line(x + width, y, x + width + 4, y, fmt::format("stroke=\"{}\"", svg::ink)) +
+           svg::text(x + width + 8, y + 5, level_words(levels, i), "start");
     if (levels.step == 0.0) break;
   }
   return out + svg::text(x + width + 72, top + 0.5 * height, title, "middle",
@@ -180,15 +185,19 @@ std::string colour_bar(const Stage& stage, const Levels& levels, const std::stri
                                      top + 0.5 * height));
 }
 
-std::string filled_bands(const ContourField& field, const Levels& levels, const Stage& stage) {
+/// Level by level over all copies of the passage, so that no seam shows where copies meet.
+std::string filled_bands(const CascadeView& view, const ContourField& field, const Levels& levels,
+                         const Stage& stage) {
   const double tolerance = 0.12 / stage.view.scale;
-  std::string out = "<g stroke-width=\"6\" fill-rule=\"evenodd\" stroke-linejoin=\"round\">";
+  std::string out = "<g stroke-width=\"8\" fill-rule=\"evenodd\" stroke-linejoin=\"round\">";
   for (int i = 0; i < levels.bands; ++i) {
     // The lowest colour lies under everything, node values a shade below the lowest cell included.
     const double level = i == 0 ? levels.first - 1.0 - std::abs(levels.first) : levels.at(i);
     const std::string d = svg::path_data(stage.view, field.region_above(level, tolerance), true);
-    if (!d.empty())
-      out += fmt::format("<path d=\"{0}\" fill=\"{1}\" stroke=\"{1}\"/>", d, levels.colour(i));
+    if (d.empty()) continue;
+    const std::string path =
+        fmt::format("<path d=\"{0}\" fill=\"{1}\" stroke=\"{1}\"/>", d, levels.colour(i));
+    out += repeated(view, stage, fmt::format("b{}", i), path, stage.first_copy, stage.last_copy);
   }
   return out + "</g>";
 }
@@ -268,10 +277,11 @@ std::string field_picture(const CascadeView& view, const std::vector<double>& ce
   const ContourField field(*view.mesh, cell_values);
   const Levels levels = make_levels(field.least(), field.greatest());
   const Stage stage = make_stage(view, window_of(view));
-  const std::string passage = filled_bands(field, levels, stage) + marked_line(field, scale, stage);
   const std::string body =
       clip(stage, view.id) + fmt::format("<g clip-path=\"url(#{}clip)\">", view.id) +
-      repeated(view, stage, "part", passage, stage.first_copy, stage.last_copy) +
+      filled_bands(view, field, levels, stage) +
+      repeated(view, stage, "line", marked_line(field, scale, stage), stage.first_copy,
+               stage.last_copy) +
       blades(view, stage) + "</g>" + frame(stage) + scale_bar(stage) + line_key(scale, stage) +
       motion_arrow(view, stage) + colour_bar(stage, levels, scale.title);
   return svg::document(stage.width + margin + 116.0, stage.height + 40.0, view.label, body);
@@ -280,7 +290,7 @@ std::string field_picture(const CascadeView& view, const std::vector<double>& ce
 std::string mesh_picture(const CascadeView& view) {
   CascadeView one = view;
   one.passages = 1;
-  return mesh_drawing(one, window_of(one), 0.4);
+  return mesh_drawing(one, window_of(one), 0.25);
 }
 
 std::string edge_mesh_picture(const CascadeView& view) {

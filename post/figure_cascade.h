@@ -17,6 +17,7 @@ struct CascadeView {
   std::vector<mesh::Point> blade;  ///< closed polygon; empty: none is drawn
   int passages = 3;                ///< side by side in the picture
   bool moves = false;              ///< an arrow shows the way the blades move
+  double width = 470.0;            ///< of the plane shown, px
   std::string id;                  ///< letters and digits, unique in the page
   std::string label;               ///< read out in place of the picture
 };

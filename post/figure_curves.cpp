@@ -147,6 +147,7 @@ std::string efficiency_figure(const SpeedLine& line, const std::string& id) {
   curve.y = times(line.blade_efficiency, 100.0);
   curve.error = times(line.blade_efficiency_error, 100.0);
   add_with_error_bars(figure, curve);
+  figure.y_from_zero = true;
   if (line.best_speed_rpm) {
     figure.marks.push_back(
         {factor * *line.best_speed_rpm,
@@ -186,7 +187,7 @@ std::string torque_figure(const SpeedLine& line, const std::string& id) {
   if (line.runaway_speed_rpm) {
     const double runaway = factor * *line.runaway_speed_rpm;
     if (line.runaway_extrapolated) extend(curve.x.back(), curve.y.back(), runaway, 0.0);
-    figure.marks.push_back({runaway, {}, "runaway " + speed_words(*line.runaway_speed_rpm)});
+    figure.marks.push_back({runaway, {}, "runaway " + speed_words(*line.runaway_speed_rpm), true});
     figure.x_greatest = 1.04 * std::max(runaway, curve.x.back());
   }
   figure.y_from_zero = true;

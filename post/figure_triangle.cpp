@@ -95,7 +95,7 @@ std::string words(const Triangle& t, double y) {
   return svg::text(left_margin - 16, y, t.place, "start", "font-weight=\"600\"") +
          svg::text(
              left_margin - 16, y + 19.0,
-             fmt::format("u {:.0f} m/s   {} {:.0f} m/s at {} {:.1f}°   {} {:.0f} m/s at {} {:.1f}°",
+             fmt::format("u {:.0f} m/s · {} {:.0f} m/s at {} {:.1f}° · {} {:.0f} m/s at {} {:.1f}°",
                          t.u, t.c_name, t.c, t.alpha_name, t.alpha_deg, t.w_name, t.w, t.beta_name,
                          t.beta_deg),
              "start", "font-size=\"13\"");

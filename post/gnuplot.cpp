@@ -166,7 +166,7 @@ std::string plot_clause(const Curve& curve, std::size_t number) {
                      curve.dashed ? " dt 2" : "", curve.second_axis ? " axes x1y2" : "", title);
 }
 
-std::string mark_commands(const Mark& mark, bool odd) {
+std::string mark_commands(const Mark& mark) {
   std::string out;
   const std::string style = fmt::format("nohead back lc {} lw 1 dt 3", colour(faint_colour));
   if (mark.x)
@@ -175,10 +175,11 @@ std::string mark_commands(const Mark& mark, bool odd) {
     out += fmt::format("set arrow from graph 0,first {0:.6g} to graph 1,first {0:.6g} {1}\n",
                        *mark.y, style);
   if (mark.words.empty()) return out;
-  const std::string place =
-      mark.x   ? fmt::format("{:.6g}, graph {} right offset -0.6,0", *mark.x, odd ? 0.06 : 0.13)
-      : mark.y ? fmt::format("graph 0.01, first {:.6g} left offset 0,0.6", *mark.y)
-               : std::string("graph 0.5, graph 0.5 center");
+  const std::string place = mark.x ? fmt::format("{:.6g}, graph {} right offset -0.6,0", *mark.x,
+                                                 mark.words_high ? 0.94 : 0.06)
+                            : mark.y
+                                ? fmt::format("graph 0.01, first {:.6g} left offset 0,0.6", *mark.y)
+                                : std::string("graph 0.5, graph 0.5 center");
   return out + fmt::format("set label {} at {} tc {} front\n", gnuplot_quoted(mark.words), place,
                            colour(ink_colour));
 }
@@ -194,7 +195,7 @@ std::string axes_commands(const LineFigure& figure) {
       figure.x_least ? fmt::format("{:.6g}", *figure.x_least) : "*",
       figure.x_greatest ? fmt::format("{:.6g}", *figure.x_greatest) : "*");
   if (figure.log_y) out += "set logscale y\nset format y '%.0e'\n";
-  if (figure.y_from_zero) out += "set yrange [0:*]\nset y2range [0:*]\n";
+  if (figure.y_from_zero) out += "set yrange [*<0:*]\nset y2range [*<0:*]\n";
   if (!figure.second_title.empty()) {
     out += fmt::format("set border 11\nset y2tics textcolor {0}\nset y2label {1} tc {0}\n", ink,
                        gnuplot_quoted(figure.second_title));
@@ -207,11 +208,7 @@ std::string script_of(const LineFigure& figure, const std::string& id) {
       fmt::format("set terminal svg size {},{} noenhanced font 'Helvetica,14' name {}\n",
                   figure.width, figure.height, gnuplot_quoted(id));
   script += axes_commands(figure);
-  bool odd = true;
-  for (const Mark& mark : figure.marks) {
-    script += mark_commands(mark, odd);
-    odd = !odd;
-  }
+  for (const Mark& mark : figure.marks) script += mark_commands(mark);
   std::string plot;
   for (std::size_t i = 0; i < figure.curves.size(); ++i) {
     if (!drawable(figure.curves[i])) continue;

@@ -26,6 +26,7 @@ struct Curve {
 struct Mark {
   std::optional<double> x, y;
   std::string words;
+  bool words_high = false;  ///< beside a line across: near the top, else near the bottom
 };
 
 struct LineFigure {

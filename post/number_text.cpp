@@ -17,10 +17,9 @@ double rounded_to_place(double value, int place) {
 }
 
 std::string thousands_apart(std::string text) {
-  const std::size_t first = text.front() == '-' ? 1 : 0;
   const std::size_t point = std::min(text.find('.'), text.size());
-  if (point - first < 5) return text;
-  for (std::size_t at = point; at > first + 3;) {
+  if (point < 5) return text;
+  for (std::size_t at = point; at > 3;) {
     at -= 3;
     text.insert(at, "\u202f");
   }
@@ -32,6 +31,7 @@ std::string fixed(double value, int place) {
   std::string text = fmt::format("{:.{}f}", place > 0 ? rounded_to_place(value, place) : value,
                                  std::max(0, -place));
   if (text.find_first_not_of("-0.") == std::string::npos && text.front() == '-') text.erase(0, 1);
+  if (text.front() == '-') return "\u2212" + thousands_apart(text.substr(1));
   return thousands_apart(text);
 }
 

@@ -5,7 +5,7 @@
 namespace falcate::post {
 
 /// `digits` significant digits, no exponent from 1e-4 to 1e7; thousands apart from five digits on
-/// (narrow no-break space); "n/a" where it is not a finite number.
+/// (narrow no-break space); a minus sign, not a hyphen; "n/a" where it is not a finite number.
 std::string number_text(double value, int digits = 4);
 
 /// "61.24 ± 0.38": the error with two significant digits, the value to the same place. An error

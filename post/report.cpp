@@ -48,7 +48,11 @@ bool finite(const std::vector<double>& values) {
 CascadeView cascade_view(const ReportInput& input, const PictureField& picture,
                          const std::string& id, const std::string& label) {
   const PointResult* point = find_point(input, picture.point_id);
-  return {picture.mesh, input.blade, 3, point != nullptr && point->wheel, id, label};
+  CascadeView view{picture.mesh, input.blade, 3,    point != nullptr && point->wheel,
+                   470.0,        id,          label};
+  if (&picture != &input.pictures.front()) view.passages = 2;
+  if (&picture != &input.pictures.front()) view.width = 260.0;
+  return view;
 }
 
 std::string mach_figure(const ReportInput& input, const PictureField& picture,
@@ -80,8 +84,8 @@ std::string pressure_figure(const ReportInput& input, const PictureField& pictur
 std::string flow_section(const ReportInput& input) {
   std::string out;
   if (input.pictures.empty()) return out;
-  out += mach_figure(input, input.pictures.front(), "mach0", "large") +
-         pressure_figure(input, input.pictures.front(), "pressure0", "large");
+  out += "<div class=\"larges\">\n" + mach_figure(input, input.pictures.front(), "mach0", "large") +
+         pressure_figure(input, input.pictures.front(), "pressure0", "large") + "</div>\n";
   if (input.pictures.size() < 2) return out;
   out += "<h3>The other points</h3>\n<div class=\"many\">\n";
   for (std::size_t i = 1; i < input.pictures.size(); ++i) {
@@ -132,10 +136,8 @@ std::string speed_section(const ReportInput& input) {
                     figure(torque_figure(line, "torque"),
                            "Torque; the bars are the numerical error, dashes are extrapolated.") +
                     "</div>\n";
-  for (const auto& number : key_numbers(input)) {
-    if (number.title != "Runaway speed" || number.caution.empty()) continue;
-    out += fmt::format("<p class=\"caution\"><b>Runaway {}:</b> {}</p>\n",
-                       escape_html(number.value), escape_html(number.caution));
+  for (const auto& caution : cautions_about(input, {"speed", "stress", "overspeed"})) {
+    out += fmt::format("<p class=\"caution\">{}</p>\n", escape_html(caution));
   }
   return out;
 }
@@ -154,7 +156,11 @@ std::string triangle_section(const ReportInput& input) {
 }
 
 std::string case_section(const ReportInput& input) {
-  return "<div class=\"pair\">\n<div>" + derived_table(input) + "</div>\n<div>" +
+  std::string cautions;
+  for (const auto& caution : cautions_about(input, {"supply", "vessel", "nois", "icing", "jet"})) {
+    cautions += fmt::format("<p class=\"caution\">{}</p>\n", escape_html(caution));
+  }
+  return "<div class=\"pair\">\n<div>" + derived_table(input) + cautions + "</div>\n<div>" +
          triangle_section(input) + "</div>\n</div>\n";
 }
 

@@ -3,6 +3,7 @@
 #include <fmt/format.h>
 
 #include <algorithm>
+#include <cctype>
 #include <cmath>
 
 #include "post/figure_curves.h"
@@ -59,18 +60,6 @@ std::string rig_sentence(const PointResult& point) {
       percent(figures.total_pressure_loss, errors.total_pressure_loss));
 }
 
-/// The case's cautions that speak of one of these words.
-std::string cautions_about(const ReportInput& input, const std::vector<std::string>& words) {
-  std::string out;
-  for (const auto& caution : input.cautions) {
-    const bool concerns = std::any_of(words.begin(), words.end(), [&](const std::string& word) {
-      return caution.find(word) != std::string::npos;
-    });
-    if (concerns) out += (out.empty() ? "" : " ") + caution;
-  }
-  return out;
-}
-
 std::string joined(const std::vector<std::string>& sentences) {
   std::string out;
   for (const auto& s : sentences) out += (out.empty() ? "" : " ") + s;
@@ -96,12 +85,10 @@ void add_speed_line_numbers(const ReportInput& input, std::vector<KeyNumber>& nu
                        line.stall_extrapolated ? "Extrapolated from the speeds computed." : ""});
   }
   if (line.runaway_speed_rpm) {
-    std::string caution =
-        line.runaway_extrapolated ? "Extrapolated from the speeds computed. " : "";
-    caution += "Without load the wheel runs up towards this speed: it must bear it, contained.";
-    const std::string more = cautions_about(input, {"runaway", "Runaway"});
-    numbers.push_back({"Runaway speed", rpm(*line.runaway_speed_rpm),
-                       more.empty() ? caution : caution + " " + more});
+    numbers.push_back(
+        {"Runaway speed", rpm(*line.runaway_speed_rpm),
+         std::string(line.runaway_extrapolated ? "Extrapolated. " : "") +
+             "A wheel without load runs up to it: it must bear it, and be contained."});
   }
 }
 
@@ -110,7 +97,7 @@ void add_speed_line_numbers(const ReportInput& input, std::vector<KeyNumber>& nu
 bool stands(const PointResult& point) { return point.failure.empty(); }
 
 std::string point_name(const PointResult& point) {
-  return point.wheel ? number_text(point.speed_rpm, 6) + " rpm" : point.id;
+  return point.wheel ? number_text(std::round(point.speed_rpm), 7) + " rpm" : point.id;
 }
 
 std::optional<std::size_t> key_point(const ReportInput& input) {
@@ -145,6 +132,21 @@ std::string answer_sentence(const ReportInput& input) {
                             input.points.size());
   }
   return sentence;
+}
+
+std::vector<std::string> cautions_about(const ReportInput& input,
+                                        const std::vector<std::string>& words) {
+  std::vector<std::string> out;
+  for (const auto& caution : input.cautions) {
+    std::string lower = caution;
+    std::transform(lower.begin(), lower.end(), lower.begin(),
+                   [](unsigned char c) { return static_cast<char>(std::tolower(c)); });
+    const bool concerns = std::any_of(words.begin(), words.end(), [&](const std::string& word) {
+      return lower.find(word) != std::string::npos;
+    });
+    if (concerns) out.push_back(caution);
+  }
+  return out;
 }
 
 std::vector<KeyNumber> key_numbers(const ReportInput& input) {

@@ -21,6 +21,10 @@ std::optional<std::size_t> key_point(const ReportInput& input);
 /// Plain text, one or a few sentences.
 std::string answer_sentence(const ReportInput& input);
 
+/// The case's cautions that speak of one of these words (lower case).
+std::vector<std::string> cautions_about(const ReportInput& input,
+                                        const std::vector<std::string>& words);
+
 /// A number that leads the report; `caution` is empty or stands right below it.
 struct KeyNumber {
   std::string title, value, caution;

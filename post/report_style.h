@@ -31,10 +31,10 @@ p{margin:.5rem 0;max-width:46rem}
 .failed{max-width:50rem}
 .pair{display:grid;grid-template-columns:repeat(auto-fit,minmax(min(100%,25rem),1fr));
 gap:1.2rem 2rem;align-items:start}
-.many{display:grid;grid-template-columns:repeat(auto-fill,minmax(min(100%,16rem),1fr));gap:1rem}
+.many{display:grid;grid-template-columns:repeat(auto-fill,minmax(min(100%,18rem),1fr));gap:1rem 1.6rem}
 figure{margin:.6rem 0}
 figure svg{display:block;max-width:100%;height:auto}
-figure.large svg{width:100%;max-width:54rem}
+figure.large svg{width:100%;max-width:44rem}
 figcaption{font-size:.88rem;color:var(--quiet);margin-top:.3rem;max-width:40rem}
 .scroll{overflow-x:auto;margin:.6rem 0 1.2rem}
 table{border-collapse:collapse;font-size:.9rem;font-variant-numeric:tabular-nums}
@@ -54,7 +54,7 @@ body{max-width:none;padding:0;font-size:9.5pt;-webkit-print-color-adjust:exact;p
 .pair{grid-template-columns:1fr 1fr;gap:4mm}.many{grid-template-columns:repeat(3,1fr)}
 .keys{grid-template-columns:repeat(3,1fr)}
 figure,tr,.keys div,.cautions li{break-inside:avoid}h2,h3{break-after:avoid}
-.scroll{overflow:visible}table{font-size:8.5pt}figure.large svg{max-width:150mm}}
+.scroll{overflow:visible}table{font-size:8.5pt}.larges{display:grid;grid-template-columns:1fr 1fr;gap:4mm}}
 )CSS";
 
 }  // namespace falcate::post
