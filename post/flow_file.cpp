@@ -171,9 +171,8 @@ void write_flow_file(const FlowField& field, const std::string& path) {
   add_array(field, *grid, "cell_quality", scaled_jacobians(*field.mesh));
   add_constants(field, *grid);
 
-  WholeFile file(path);
   vtkNew<vtkXMLUnstructuredGridWriter> writer;
-  writer->SetFileName(file.temporary().c_str());
+  writer->WriteToOutputStringOn();  // so that the file is written, checked and renamed in one place
   writer->SetInputData(grid);
   writer->SetDataModeToAppended();
   writer->EncodeAppendedDataOff();
@@ -182,9 +181,9 @@ void write_flow_file(const FlowField& field, const std::string& path) {
   const unsigned long error = writer->GetErrorCode();
   if (written != 1 || error != vtkErrorCode::NoError) {
     throw OutputError(
-        fmt::format("cannot write '{}': {}", path, vtkErrorCode::GetStringFromErrorCode(error)));
+        fmt::format("{}: cannot write: {}", path, vtkErrorCode::GetStringFromErrorCode(error)));
   }
-  file.keep();
+  write_whole_file(path, writer->GetOutputString());
 }
 
 void write_flow_collection(const std::vector<CollectionEntry>& entries, const std::string& path) {

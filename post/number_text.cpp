@@ -46,6 +46,10 @@ std::string number_text(double value, int digits) {
   return fixed(value, exponent - digits + 1);
 }
 
+std::string whole_number_text(double value) {
+  return std::isfinite(value) ? fixed(value, 0) : "n/a";
+}
+
 std::string number_with_error(double value, double error) {
   if (!std::isfinite(value)) return "n/a";
   if (!std::isfinite(error) || error <= 0.0) return number_text(value);

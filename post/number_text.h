@@ -8,6 +8,9 @@ namespace falcate::post {
 /// (narrow no-break space); a minus sign, not a hyphen; "n/a" where it is not a finite number.
 std::string number_text(double value, int digits = 4);
 
+/// Rounded to a whole number, thousands apart.
+std::string whole_number_text(double value);
+
 /// "61.24 ± 0.38": the error with two significant digits, the value to the same place. An error
 /// below a millionth of the value counts as that; without a usable error (zero, not finite) the
 /// value alone, with four digits.

@@ -97,7 +97,7 @@ void add_speed_line_numbers(const ReportInput& input, std::vector<KeyNumber>& nu
 bool stands(const PointResult& point) { return point.failure.empty(); }
 
 std::string point_name(const PointResult& point) {
-  return point.wheel ? number_text(std::round(point.speed_rpm), 7) + " rpm" : point.id;
+  return point.wheel ? whole_number_text(point.speed_rpm) + " rpm" : point.id;
 }
 
 std::optional<std::size_t> key_point(const ReportInput& input) {
