@@ -93,7 +93,8 @@ class Maker {
     rules_.gap = throat_width(outline, pitch);
     check_options(outline, pitch, rules_.gap, options);
     rules_.base = 0.1 * rules_.width;
-    fluid_ = fluid_mask(make_size_field(closed_, rules_), outline.polygon(100));
+    walls_ = wall_samples(closed_);
+    fluid_ = fluid_mask(make_size_field(walls_, rules_), outline.polygon(100));
   }
 
   /// Tries one method after the other until the cells are good; keeps the best.
@@ -126,7 +127,7 @@ class Maker {
     double low = rules_.width / 2000.0, high = rules_.width;
     for (int pass = 0; pass < 14; ++pass) {
       rules_.base = std::sqrt(low * high);
-      const double now = estimated_cells(make_size_field(closed_, rules_), fluid_);
+      const double now = estimated_cells(make_size_field(walls_, rules_), fluid_);
       (now > cells ? low : high) = rules_.base;
     }
   }
@@ -134,11 +135,12 @@ class Maker {
   /// The count follows the estimate but for a factor near one, which the first mesh tells.
   Nested sized_mesh(const Method& method) {
     const double wanted = options_.cells / std::pow(4.0, options_.levels - 1);
+    MesherProcess mesher(program_, options_.time_limit_s);
     std::optional<CurvedMesh> best;
     double best_miss = 1e300, factor = 1.0;
-    for (int attempt = 0; attempt < 4 && best_miss > 0.1; ++attempt) {
+    for (int attempt = 0; attempt < 4 && best_miss > 0.12; ++attempt) {
       choose_base(wanted * factor);
-      auto mesh = coarse_mesh(method);
+      auto mesh = coarse_mesh(method, mesher);
       const double ratio = static_cast<double>(mesh.cells.size()) / wanted;
       if (std::abs(ratio - 1.0) < best_miss) {
         best_miss = std::abs(ratio - 1.0);
@@ -150,12 +152,11 @@ class Maker {
     return nested(*best, boundary_, options_.levels);
   }
 
-  CurvedMesh coarse_mesh(const Method& method) const {
-    const auto size = make_size_field(closed_, rules_);
+  CurvedMesh coarse_mesh(const Method& method, MesherProcess& mesher) const {
+    const auto size = make_size_field(walls_, rules_);
     const auto nodes = discretised(boundary_, size);
     MesherRequest request{method.algorithm, method.recombination, nodes.points, size};
-    return curved_mesh(boundary_, nodes, run_mesher(program_, request, options_.time_limit_s),
-                       rules_.pitch);
+    return curved_mesh(boundary_, nodes, mesher.fill(request), rules_.pitch);
   }
 
   MeshLevels finished(const Nested& nest) const {
@@ -183,6 +184,7 @@ class Maker {
   PassageBoundary boundary_;  // refers to closed_
   std::string program_;
   SizeRules rules_{};
+  std::vector<WallSample> walls_;
   std::vector<char> fluid_;
 };
 

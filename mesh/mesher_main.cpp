@@ -1,8 +1,8 @@
-/// falcate-mesher: fills one passage with quadrilaterals by Gmsh; started by run_mesher() only.
+/// falcate-mesher: fills one passage with quadrilaterals by Gmsh; started by MesherProcess only.
 ///
 /// Some of Gmsh's algorithms order by the addresses of objects. So that the same passage gives the
 /// same mesh, all C++ memory comes from one arena in the order in which it is asked for and is
-/// never handed back: this process lives for one mesh.
+/// never handed back: this process lives for a few meshes.
 #include <gmsh.h>
 #include <sys/mman.h>
 
@@ -127,6 +127,7 @@ MesherAnswer collect() {
 }
 
 MesherAnswer fill(const MesherRequest& request) {
+  gmsh::clear();
   set_options(request);
   gmsh::model::add("passage");
   add_boundary(request.curves);
@@ -142,9 +143,8 @@ MesherAnswer fill(const MesherRequest& request) {
 int main() {
   using namespace falcate::mesh;
   try {
-    const auto request = read_request(kRequestDescriptor);
     gmsh::initialize(0, nullptr, false);
-    write_answer(kAnswerDescriptor, fill(request));
+    while (await_request()) write_answer(fill(read_request()));
   } catch (...) {
     std::_Exit(1);
   }

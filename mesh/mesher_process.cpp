@@ -2,10 +2,12 @@
 
 #include <fcntl.h>
 #include <fmt/format.h>
+#include <poll.h>
 #include <signal.h>
 #include <sys/mman.h>
 #include <sys/prctl.h>
 #include <sys/resource.h>
+#include <sys/socket.h>
 #include <sys/wait.h>
 #include <unistd.h>
 
@@ -15,7 +17,6 @@
 #include <cstddef>
 #include <cstring>
 #include <filesystem>
-#include <thread>
 
 #include "mesh/passage_mesh.h"
 
@@ -24,8 +25,12 @@ namespace {
 
 constexpr rlim_t kMemoryLimit = rlim_t{4} << 30;  // bytes of address space
 
-/// Everything travels as doubles: counts are exact in them up to 2^53.
-void write_all(int descriptor, const std::vector<double>& data) {
+/// Replaces what is in the file. Everything travels as doubles: counts are exact in them up to
+/// 2^53.
+void rewrite_file(int descriptor, const std::vector<double>& data) {
+  if (ftruncate(descriptor, 0) != 0 || lseek(descriptor, 0, SEEK_SET) != 0) {
+    throw MeshError("mesh data cannot be passed on");
+  }
   const char* from = reinterpret_cast<const char*>(data.data());
   for (std::size_t left = data.size() * sizeof(double); left > 0;) {
     const ssize_t written = write(descriptor, from, left);
@@ -97,13 +102,15 @@ class MemoryFile {
   MemoryFile(const MemoryFile&) = delete;
   MemoryFile& operator=(const MemoryFile&) = delete;
   int descriptor() const { return descriptor_; }
+  void rewrite(const std::vector<double>& data) const { rewrite_file(descriptor_, data); }
 
  private:
   int descriptor_;
 };
 
 /// In the child, between fork and exec: only calls that are safe there.
-[[noreturn]] void become_mesher(const char* program, int request, int answer, double time_limit_s) {
+[[noreturn]] void become_mesher(const char* program, const std::array<int, 3>& inherited,
+                                double time_limit_s) {
   prctl(PR_SET_PDEATHSIG, SIGKILL);
   const rlimit memory{kMemoryLimit, kMemoryLimit};
   const auto seconds = static_cast<rlim_t>(std::ceil(time_limit_s)) + 1;
@@ -111,72 +118,116 @@ class MemoryFile {
   setrlimit(RLIMIT_AS, &memory);
   setrlimit(RLIMIT_CPU, &processor);
   setrlimit(RLIMIT_CORE, &core);
-  // Out of the way first, since either may sit on the other's number.
-  const int high_request = fcntl(request, F_DUPFD, 10), high_answer = fcntl(answer, F_DUPFD, 10);
+  // Out of the way first, since any may sit on another's number.
+  std::array<int, 3> high{};
+  for (std::size_t i = 0; i < 3; ++i) high[i] = fcntl(inherited[i], F_DUPFD_CLOEXEC, 10);
   const int nothing = open("/dev/null", O_RDWR);
   for (int stream : {0, 1, 2}) dup2(nothing, stream);
-  dup2(high_request, kRequestDescriptor);
-  dup2(high_answer, kAnswerDescriptor);
-  for (int other : {high_request, high_answer}) close(other);
+  for (std::size_t i = 0; i < 3; ++i) dup2(high[i], kRequestDescriptor + static_cast<int>(i));
   char* const arguments[] = {const_cast<char*>(program), nullptr};
   execv(program, arguments);
   _exit(127);
 }
 
-/// Status of the child as wait() gives it; kills it when its time is up.
-int wait_for(pid_t child, double time_limit_s) {
-  const auto end = std::chrono::steady_clock::now() + std::chrono::duration<double>(time_limit_s);
-  int status = 0;
-  for (;;) {
-    const pid_t done = waitpid(child, &status, WNOHANG);
-    if (done == child) return status;
-    if (done < 0 && errno != EINTR) throw MeshError("the mesher got lost");
-    if (std::chrono::steady_clock::now() > end) break;
-    std::this_thread::sleep_for(std::chrono::milliseconds(1));
-  }
-  kill(child, SIGKILL);
-  while (waitpid(child, &status, 0) < 0 && errno == EINTR) {
-  }
-  throw MeshError(
-      fmt::format("the mesher did not finish within {:.4g} s and was stopped", time_limit_s));
-}
-
-void check_status(const std::string& program, int status) {
-  if (WIFEXITED(status) && WEXITSTATUS(status) == 0) return;
+std::string reason(const std::string& program, int status) {
   if (WIFEXITED(status) && WEXITSTATUS(status) == 127) {
-    throw MeshError(fmt::format("the mesher {} cannot be started; reinstall the program", program));
+    return fmt::format("the mesher {} cannot be started; reinstall the program", program);
   }
   if (WIFSIGNALED(status) && WTERMSIG(status) == SIGXCPU) {
-    throw MeshError("the mesher used up its processor time and was stopped");
+    return "the mesher used up its processor time and was stopped";
   }
-  throw MeshError("the mesher broke down on this passage");
+  return "the mesher broke down on this passage";
 }
 
 }  // namespace
 
-std::string mesher_beside_this_program() {
-  std::error_code error;
-  const auto self = std::filesystem::read_symlink("/proc/self/exe", error);
-  if (error)
-    throw MeshError("the directory of this program cannot be found, and the mesher lies there");
-  return (self.parent_path() / "falcate-mesher").string();
-}
+struct MesherProcess::State {
+  std::string program;
+  double limit;
+  std::chrono::steady_clock::time_point end;
+  MemoryFile request{"falcate-request"}, answer{"falcate-answer"};
+  int signal = -1;
+  pid_t child = -1;
+  std::string failure;
 
-MesherAnswer run_mesher(const std::string& program, const MesherRequest& request,
-                        double time_limit_s) {
+  void start() {
+    int pair[2];
+    if (socketpair(AF_UNIX, SOCK_STREAM | SOCK_CLOEXEC, 0, pair) != 0) {
+      throw MeshError(fmt::format("the mesher cannot be started: {}", std::strerror(errno)));
+    }
+    signal = pair[0];
+    child = fork();
+    if (child == 0) {
+      become_mesher(program.c_str(), {request.descriptor(), answer.descriptor(), pair[1]}, limit);
+    }
+    close(pair[1]);
+    if (child < 0)
+      throw MeshError(fmt::format("the mesher cannot be started: {}", std::strerror(errno)));
+  }
+
+  int stop() {
+    int status = 0;
+    if (child <= 0) return status;
+    kill(child, SIGKILL);
+    while (waitpid(child, &status, 0) < 0 && errno == EINTR) {
+    }
+    child = -1;
+    return status;
+  }
+
+  [[noreturn]] void fail(const std::string& what) {
+    failure = what;
+    throw MeshError(failure);
+  }
+
+  /// Waits for the byte that says that the answer is there.
+  void await_answer() {
+    for (;;) {
+      const auto left =
+          std::chrono::duration<double, std::milli>(end - std::chrono::steady_clock::now());
+      pollfd watched{signal, POLLIN, 0};
+      const int ready =
+          left.count() <= 0.0 ? 0 : poll(&watched, 1, static_cast<int>(std::ceil(left.count())));
+      if (ready < 0 && errno == EINTR) continue;
+      if (ready <= 0) {
+        stop();
+        fail(fmt::format("the mesher did not finish within {:.4g} s and was stopped", limit));
+      }
+      char byte = 0;
+      if (recv(signal, &byte, 1, 0) == 1) return;
+      int status = 0;  // it has ended by itself: ask how before making sure that it is gone
+      if (waitpid(child, &status, 0) == child) child = -1;
+      stop();
+      fail(reason(program, status));
+    }
+  }
+};
+
+MesherProcess::MesherProcess(const std::string& program, double time_limit_s)
+    : state_(std::make_unique<State>()) {
   if (access(program.c_str(), X_OK) != 0) {
     throw MeshError(fmt::format("the mesher {} is missing; reinstall the program", program));
   }
-  const MemoryFile question("falcate-request"), answer("falcate-answer");
-  write_all(question.descriptor(), pack(request));
-  const pid_t child = fork();
-  if (child < 0)
-    throw MeshError(fmt::format("the mesher cannot be started: {}", std::strerror(errno)));
-  if (child == 0) {
-    become_mesher(program.c_str(), question.descriptor(), answer.descriptor(), time_limit_s);
-  }
-  check_status(program, wait_for(child, time_limit_s));
-  Unpacker data(read_all(answer.descriptor()));
+  state_->program = program;
+  state_->limit = time_limit_s;
+  state_->end = std::chrono::steady_clock::now() +
+                std::chrono::duration_cast<std::chrono::steady_clock::duration>(
+                    std::chrono::duration<double>(time_limit_s));
+  state_->start();
+}
+
+MesherProcess::~MesherProcess() {
+  state_->stop();
+  if (state_->signal >= 0) close(state_->signal);
+}
+
+MesherAnswer MesherProcess::fill(const MesherRequest& request) {
+  if (!state_->failure.empty()) throw MeshError(state_->failure);
+  state_->request.rewrite(pack(request));
+  const char byte = 1;
+  send(state_->signal, &byte, 1, MSG_NOSIGNAL);  // if it is gone, the wait below notices
+  state_->await_answer();
+  Unpacker data(read_all(state_->answer.descriptor()));
   MesherAnswer result;
   result.nodes.resize(static_cast<std::size_t>(data.count()));
   result.cells.resize(static_cast<std::size_t>(data.count()));
@@ -187,8 +238,21 @@ MesherAnswer run_mesher(const std::string& program, const MesherRequest& request
   return result;
 }
 
-MesherRequest read_request(int descriptor) {
-  Unpacker data(read_all(descriptor));
+bool await_request() {
+  char byte = 0;
+  return recv(kSignalDescriptor, &byte, 1, 0) == 1;
+}
+
+std::string mesher_beside_this_program() {
+  std::error_code error;
+  const auto self = std::filesystem::read_symlink("/proc/self/exe", error);
+  if (error)
+    throw MeshError("the directory of this program cannot be found, and the mesher lies there");
+  return (self.parent_path() / "falcate-mesher").string();
+}
+
+MesherRequest read_request() {
+  Unpacker data(read_all(kRequestDescriptor));
   MesherRequest request;
   request.algorithm = data.count();
   request.recombination = data.count();
@@ -206,13 +270,15 @@ MesherRequest read_request(int descriptor) {
   return request;
 }
 
-void write_answer(int descriptor, const MesherAnswer& answer) {
+void write_answer(const MesherAnswer& answer) {
   std::vector<double> data{double(answer.nodes.size()), double(answer.cells.size())};
   for (const auto& p : answer.nodes) data.insert(data.end(), {p.x(), p.y()});
   for (const auto& cell : answer.cells) {
     for (int node : cell) data.push_back(node);
   }
-  write_all(descriptor, data);
+  rewrite_file(kAnswerDescriptor, data);
+  const char byte = 1;
+  send(kSignalDescriptor, &byte, 1, MSG_NOSIGNAL);
 }
 
 }  // namespace falcate::mesh

@@ -1,9 +1,11 @@
 /// Runs `falcate-mesher`, which holds Gmsh, in a process of its own: errors in there can end or
 /// hang a process in ways nothing can catch. Limits: memory, processor time and time by the clock.
-/// Request and answer pass through memory files that the child inherits; no file is left anywhere.
-/// Errors: `MeshError` in plain words.
+/// Requests and answers pass through memory files that the child inherits; no file is left
+/// anywhere. Loading Gmsh takes longer than a mesh, so one process serves several requests. Errors:
+/// `MeshError` in plain words.
 #pragma once
 #include <array>
+#include <memory>
 #include <string>
 #include <vector>
 
@@ -26,18 +28,34 @@ struct MesherAnswer {
   std::vector<std::array<int, 4>> cells;  ///< a triangle ends with -1
 };
 
-/// File descriptors of request and answer in the mesher process.
+/// File descriptors in the mesher process: request, answer, and a socket that carries one byte each
+/// time either is ready.
 constexpr int kRequestDescriptor = 3;
 constexpr int kAnswerDescriptor = 4;
+constexpr int kSignalDescriptor = 5;
 
 /// The mesher that belongs to the running program: in the same directory.
 std::string mesher_beside_this_program();
 
-MesherAnswer run_mesher(const std::string& program, const MesherRequest& request,
-                        double time_limit_s);
+/// A running mesher; ended with the object. The time limit is for all that it does together.
+class MesherProcess {
+ public:
+  MesherProcess(const std::string& program, double time_limit_s);
+  ~MesherProcess();
+  MesherProcess(const MesherProcess&) = delete;
+  MesherProcess& operator=(const MesherProcess&) = delete;
+
+  /// After an error the process is gone, and every further call is the same error.
+  MesherAnswer fill(const MesherRequest& request);
+
+ private:
+  struct State;
+  std::unique_ptr<State> state_;
+};
 
 // The mesher's own end of the line.
-MesherRequest read_request(int descriptor);
-void write_answer(int descriptor, const MesherAnswer& answer);
+bool await_request();  ///< false: no more will come
+MesherRequest read_request();
+void write_answer(const MesherAnswer& answer);
 
 }  // namespace falcate::mesh

@@ -21,25 +21,14 @@ double coarsening(const SizeRules& rules) {
 }
 
 /// Places that want cells smaller than the base: curved walls and sharp edges.
-std::vector<Source> sources_of(const ClosedOutline& outline, const SizeRules& rules) {
+std::vector<Source> sources_of(const std::vector<WallSample>& walls, const SizeRules& rules) {
   std::vector<Source> sources;
   const double floor = 1e-3 * rules.width;
   const double share = rules.curvature_share * coarsening(rules);
-  const auto add = [&](double u, double size) {
-    if (size < rules.base) sources.push_back({outline.point(u), std::max(size, floor)});
-  };
-  for (int k = 0; k < kWallSamples; ++k) {
-    const double u = outline.length() * k / kWallSamples;
-    add(u, share / std::max(outline.curvature(u), 1e-9 / rules.width));
+  for (const auto& wall : walls) {
+    const double size = wall.radius > 0.0 ? std::max(floor, share * wall.radius) : 0.5 * rules.base;
+    if (size < rules.base) sources.push_back({wall.at, size});
   }
-  // The edges once more, closely: a small radius can lie between two samples.
-  for (double nose : {0.0, outline.suction_length()}) {
-    for (int k = -20; k <= 20; ++k) {
-      const double u = nose + outline.length() * k / (20.0 * kWallSamples);
-      add(u, share / std::max(outline.curvature(u), 1e-9 / rules.width));
-    }
-  }
-  for (double u : outline.kinks()) add(u, 0.5 * rules.base);
   return sources;
 }
 
@@ -91,7 +80,22 @@ double SizeField::at(double x, double y) const {
          a * ((1.0 - b) * value(i + 1, k) + b * value(i + 1, k + 1));
 }
 
-SizeField make_size_field(const ClosedOutline& outline, const SizeRules& rules) {
+std::vector<WallSample> wall_samples(const ClosedOutline& outline) {
+  std::vector<WallSample> samples;
+  const auto add = [&](double u) {
+    samples.push_back(
+        {outline.point(u), 1.0 / std::max(outline.curvature(u), 1e-9 / outline.length())});
+  };
+  for (int k = 0; k < kWallSamples; ++k) add(outline.length() * k / kWallSamples);
+  // The edges once more, closely: a small radius can lie between two samples.
+  for (double nose : {0.0, outline.suction_length()}) {
+    for (int k = -20; k <= 20; ++k) add(nose + outline.length() * k / (20.0 * kWallSamples));
+  }
+  for (double u : outline.kinks()) samples.push_back({outline.point(u), 0.0});
+  return samples;
+}
+
+SizeField make_size_field(const std::vector<WallSample>& walls, const SizeRules& rules) {
   SizeField field;
   field.x0 = rules.inlet_x;
   field.pitch = rules.pitch;
@@ -99,7 +103,7 @@ SizeField make_size_field(const ClosedOutline& outline, const SizeRules& rules) 
   field.nx = static_cast<int>(std::ceil((rules.outlet_x - rules.inlet_x) / field.dx)) + 1;
   field.ny = std::max(8, static_cast<int>(std::ceil(rules.pitch / field.dx)));
   field.dy = rules.pitch / field.ny;
-  const auto sources = thinned(sources_of(outline, rules), rules.gradient);
+  const auto sources = thinned(sources_of(walls, rules), rules.gradient);
   for (int i = 0; i < field.nx; ++i) {
     for (int k = 0; k < field.ny; ++k) {
       const Point p(field.x0 + i * field.dx, k * field.dy);

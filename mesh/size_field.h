@@ -17,6 +17,13 @@ struct SizeField {
   double at(double x, double y) const;
 };
 
+/// A place on the wall and its radius of curvature, 0 at a sharp edge.
+struct WallSample {
+  Point at;
+  double radius;  ///< of curvature, m
+};
+std::vector<WallSample> wall_samples(const ClosedOutline& outline);
+
 /// What the sizes are made from.
 struct SizeRules {
   double base;  ///< edge length between the blades
@@ -27,7 +34,7 @@ struct SizeRules {
   double curvature_share = 0.6;  ///< edge length / radius of curvature of the wall
 };
 
-SizeField make_size_field(const ClosedOutline& outline, const SizeRules& rules);
+SizeField make_size_field(const std::vector<WallSample>& walls, const SizeRules& rules);
 
 /// For each grid point whether it lies in the fluid, given the blade as a polygon.
 std::vector<char> fluid_mask(const SizeField& field, const std::vector<Point>& blade_polygon);
