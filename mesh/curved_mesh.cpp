@@ -150,18 +150,57 @@ void put_in_order(const MesherAnswer& answer, const std::vector<int>& loop, Curv
   std::sort(mesh.cells.begin(), mesh.cells.end());
 }
 
-/// Corner quality that also tells apart long from square cells: 2 det/(a^2 + b^2).
-double corner_quality(const std::vector<Point>& nodes, const std::array<int, 4>& cell) {
-  const int n = sides(cell);
-  double least = 1e300;
-  for (int k = 0; k < n; ++k) {
-    const Point& here = nodes[at(cell[at(k)])];
-    const Point a = nodes[at(cell[at((k + 1) % n)])] - here;
-    const Point b = nodes[at(cell[at((k + n - 1) % n)])] - here;
-    least = std::min(least, 2.0 * cross(a, b) / (a.squaredNorm() + b.squaredNorm()));
-  }
-  return n == 4 ? least : least / (0.5 * std::sqrt(3.0));
+/// Corner quality that also tells apart long from square cells.
+double corner_quality(const Point& a, const Point& b) {
+  return 2.0 * cross(a, b) / (a.squaredNorm() + b.squaredNorm());
 }
+
+/// Along the walls the sides of a cell become, as it is split again and again, the curve itself:
+/// what counts at a corner on the wall is the tangent as much as the chord.
+class CellQuality {
+ public:
+  CellQuality(const CurvedMesh& mesh, const PassageBoundary& boundary) : mesh_(mesh) {
+    for (const auto& edge : mesh.edges) {
+      const auto& curve = boundary.curves[at(edge.curve)];
+      if (!curve.kind || !is_wall(*curve.kind)) continue;
+      const double h = 1e-4 * (edge.to - edge.from);
+      const Point first = mesh.nodes[at(edge.first)], second = mesh.nodes[at(edge.second)];
+      const double length = (second - first).norm();
+      tangents_[{edge.first, edge.second}] =
+          length * (curve.point(edge.from + h) - first).normalized();
+      tangents_[{edge.second, edge.first}] =
+          length * (curve.point(edge.to - h) - second).normalized();
+    }
+    wall_.assign(mesh.nodes.size(), 0);
+    for (const auto& [edge, tangent] : tangents_) wall_[at(edge.first)] = 1;
+  }
+
+  double operator()(int c) const {
+    const auto& cell = mesh_.cells[at(c)];
+    const int n = sides(cell);
+    double least = 1e300;
+    for (int k = 0; k < n; ++k) {
+      const int here = cell[at(k)], next = cell[at((k + 1) % n)], last = cell[at((k + n - 1) % n)];
+      const Point a = mesh_.nodes[at(next)] - mesh_.nodes[at(here)];
+      const Point b = mesh_.nodes[at(last)] - mesh_.nodes[at(here)];
+      least = std::min(least, corner_quality(a, b));
+      if (wall_[at(here)]) {
+        least = std::min(least, corner_quality(along(here, next, a), along(here, last, b)));
+      }
+    }
+    return n == 4 ? least : least / (0.5 * std::sqrt(3.0));
+  }
+
+ private:
+  Point along(int from, int to, const Point& chord) const {
+    const auto found = tangents_.find({from, to});
+    return found == tangents_.end() ? chord : found->second;
+  }
+
+  const CurvedMesh& mesh_;
+  std::map<std::pair<int, int>, Point> tangents_;
+  std::vector<char> wall_;
+};
 
 /// Nodes that move together: an inner node, or a periodic pair.
 struct Mover {
@@ -189,15 +228,15 @@ std::vector<Mover> movers_of(const CurvedMesh& mesh, const std::vector<char>& fi
   return movers;
 }
 
-double worst_around(const CurvedMesh& mesh, const Mover& mover) {
+double worst_around(const CellQuality& quality, const Mover& mover) {
   double worst = 1e300;
-  for (int c : mover.cells) worst = std::min(worst, corner_quality(mesh.nodes, mesh.cells[at(c)]));
+  for (int c : mover.cells) worst = std::min(worst, quality(c));
   return worst;
 }
 
 /// Eight directions, step halved where none helps.
-void improve(CurvedMesh& mesh, const Mover& mover, double good_enough) {
-  double best = worst_around(mesh, mover);
+void improve(CurvedMesh& mesh, const CellQuality& quality, const Mover& mover, double good_enough) {
+  double best = worst_around(quality, mover);
   if (best >= good_enough) return;
   double step = 0.0;
   const auto& first = mesh.cells[at(mover.cells.front())];
@@ -216,7 +255,7 @@ void improve(CurvedMesh& mesh, const Mover& mover, double good_enough) {
       const auto before = mesh.nodes[at(mover.nodes.front())];
       const Point by = step * Point(std::cos(0.25 * M_PI * k), std::sin(0.25 * M_PI * k));
       move(by);
-      if (const double now = worst_around(mesh, mover); now > best + 1e-9) {
+      if (const double now = worst_around(quality, mover); now > best + 1e-9) {
         best = now;
         better = true;
       } else {
@@ -351,7 +390,8 @@ double scaled_jacobian(const std::vector<Point>& nodes, const std::array<int, 4>
   return n == 4 ? least : least / (0.5 * std::sqrt(3.0));
 }
 
-void smooth(CurvedMesh& mesh) {
+void smooth(CurvedMesh& mesh, const PassageBoundary& boundary) {
+  const CellQuality quality(mesh, boundary);
   std::vector<char> fixed(mesh.nodes.size(), 0);
   std::map<int, int> edges_at;
   std::vector<char> on_periodic(mesh.nodes.size(), 0);
@@ -362,7 +402,7 @@ void smooth(CurvedMesh& mesh) {
   }
   const auto movers = movers_of(mesh, fixed);
   for (int sweep = 0; sweep < 12; ++sweep) {
-    for (const auto& mover : movers) improve(mesh, mover, 0.6);
+    for (const auto& mover : movers) improve(mesh, quality, mover, 0.65);
   }
   for (const auto& [low, high] : mesh.periodic) {
     mesh.nodes[at(high)] = mesh.nodes[at(low)] + Point(0.0, mesh.pitch);

@@ -47,7 +47,7 @@ double scaled_jacobian(const std::vector<Point>& nodes, const std::array<int, 4>
 
 /// Moves inner and periodic nodes (wall, inlet and outlet nodes stay) where that makes the worst
 /// cell around them better: a guarded pattern search, which also unfolds cells.
-void smooth(CurvedMesh& mesh);
+void smooth(CurvedMesh& mesh, const PassageBoundary& boundary);
 
 RawMesh raw_mesh(const CurvedMesh& mesh, const PassageBoundary& boundary);
 

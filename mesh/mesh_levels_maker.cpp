@@ -148,7 +148,7 @@ class Maker {
       }
       factor /= ratio;
     }
-    smooth(*best);
+    smooth(*best, boundary_);
     return nested(*best, boundary_, options_.levels);
   }
 

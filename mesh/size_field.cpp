@@ -23,7 +23,8 @@ double coarsening(const SizeRules& rules) {
 /// Places that want cells smaller than the base: curved walls and sharp edges.
 std::vector<Source> sources_of(const std::vector<WallSample>& walls, const SizeRules& rules) {
   std::vector<Source> sources;
-  const double floor = 1e-3 * rules.width;
+  // A tenth of the base is where growth at the limited gradient costs no more cells than the row.
+  const double floor = 0.1 * rules.base;
   const double share = rules.curvature_share * coarsening(rules);
   for (const auto& wall : walls) {
     const double size = wall.radius > 0.0 ? std::max(floor, share * wall.radius) : 0.5 * rules.base;
