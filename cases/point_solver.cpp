@@ -1,0 +1,182 @@
+#include "cases/point_solver.h"
+
+#include <fmt/format.h>
+
+#include <cmath>
+#include <exception>
+#include <numbers>
+
+#include "post/error_bar.h"
+#include "post/passage_figures.h"
+#include "solver/steady_solver.h"
+
+namespace falcate::cases {
+namespace {
+
+using States = std::vector<solver::Primitive>;
+
+/// a + b - c cell by cell, or nothing where that is no gas.
+States moved(const States& a, const States& b, const States& c) {
+  States sum = a;
+  for (std::size_t i = 0; i < sum.size(); ++i) {
+    sum[i].density += b[i].density - c[i].density;
+    sum[i].u += b[i].u - c[i].u;
+    sum[i].v += b[i].v - c[i].v;
+    sum[i].pressure += b[i].pressure - c[i].pressure;
+    if (!(sum[i].density > 0.1 * a[i].density) || !(sum[i].pressure > 0.1 * a[i].pressure))
+      return {};
+  }
+  return sum;
+}
+
+class PointSolver {
+ public:
+  PointSolver(const Case& input, const mesh::MeshLevels& meshes, const OperatingPoint& point,
+              const LevelStates& before, RunObserver& observer)
+      : case_(input), meshes_(meshes), point_(point), before_(before), observer_(observer) {
+    solved_.states.resize(meshes.levels.size());
+  }
+
+  SolvedPoint solve() {
+    describe();
+    try {
+      for (std::size_t level = 0; level < meshes_.levels.size(); ++level) solve_level(level);
+      gather();
+    } catch (const std::exception& error) {
+      solved_.result.failure = error.what();
+    }
+    return std::move(solved_);
+  }
+
+ private:
+  void describe() {
+    post::PointResult& result = solved_.result;
+    result.id = point_.id;
+    result.shape = case_.shape;
+    result.wheel = case_.kind == CaseKind::wheel;
+    result.speed_rpm = point_.speed * 30.0 / std::numbers::pi;
+    result.blade_speed_m_s = point_.blade_speed;
+    result.speed_ratio = point_.speed_ratio;
+    result.cells = meshes_.levels.back().cell_count();
+  }
+
+  solver::FlowProblem problem(std::size_t level) const {
+    solver::FlowProblem problem;
+    problem.mesh = &meshes_.levels[level];
+    problem.gas = case_.gas;
+    problem.inlet = point_.inlet;
+    problem.exit_pressure = point_.exit_pressure;
+    return problem;
+  }
+
+  States prolonged(std::size_t level, const LevelStates& states) const {
+    if (level == 0 || states.size() <= level - 1 || states[level - 1].empty()) return {};
+    return solver::prolong(states[level - 1], meshes_.parent[level]);
+  }
+
+  States start(std::size_t level) const {
+    const States coarse = prolonged(level, solved_.states);
+    const States before = level < before_.size() ? before_[level] : States{};
+    if (level == 0 || before.empty()) return before.empty() ? coarse : before;
+    const States coarse_before = prolonged(level, before_);
+    if (coarse.empty() || coarse_before.empty()) return before;
+    const States start = moved(before, coarse, coarse_before);
+    return start.empty() ? coarse : start;
+  }
+
+  States second_start(std::size_t level) const {
+    const bool warm = level < before_.size() && !before_[level].empty();
+    return warm ? prolonged(level, solved_.states) : States{};
+  }
+
+  solver::FlowSolution attempt(std::size_t level, const States& start) {
+    solver::SteadyOptions options;
+    options.residual_drop = case_.residual_drop;
+    options.max_steps = case_.max_steps;
+    PointProgress progress{point_.id,
+                           static_cast<int>(level),
+                           static_cast<int>(meshes_.levels.size()),
+                           {},
+                           case_.residual_drop};
+    auto solution = solver::solve_steady(problem(level), options, start,
+                                         [&](const solver::ConvergencePoint& step) {
+                                           progress.step = step;
+                                           observer_.progress(progress);
+                                         });
+    solved_.result.seconds += solution.summary.seconds;
+    return solution;
+  }
+
+  void solve_level(std::size_t level) {
+    const States first = start(level);
+    solver::FlowSolution solution = attempt(level, first);
+    if (solution.summary.status == solver::SolutionStatus::failed && !first.empty()) {
+      // Once more without the point before it, or, where that was not used, cold.
+      solver::FlowSolution again = attempt(level, second_start(level));
+      if (again.summary.residual_drop < solution.summary.residual_drop) solution = std::move(again);
+    }
+    const bool settled = solution.summary.status != solver::SolutionStatus::failed;
+    if (settled) {
+      figures_.push_back(post::passage_figures(problem(level), solution, point_.duty));
+      solved_.states[level] = solution.cells;
+    } else {
+      figures_.clear();  // the error bar needs neighbouring levels
+      if (level + 1 < meshes_.levels.size())
+        solved_.result.remarks.push_back(
+            fmt::format("On the mesh of {} cells the flow did not settle: {}.",
+                        meshes_.levels[level].cell_count(), solution.summary.reason));
+    }
+    finest_ = std::move(solution);
+  }
+
+  void gather() {
+    post::PointResult& result = solved_.result;
+    result.solution = finest_.summary;
+    if (finest_.summary.status == solver::SolutionStatus::failed) {
+      result.failure = fmt::format("the flow did not settle: {} (residual fell to {:.1e})",
+                                   finest_.summary.reason, finest_.summary.residual_drop);
+      return;
+    }
+    result.figures = figures_.back();
+    result.numerical_error = post::error_bars(figures_);
+    const auto surface = post::surface_distribution(problem(meshes_.levels.size() - 1), finest_,
+                                                    result.figures.inlet.total_pressure_pa);
+    result.suction = surface.suction;
+    result.pressure = surface.pressure;
+    add_remarks();
+  }
+
+  void add_remarks() {
+    post::PointResult& result = solved_.result;
+    if (result.wheel && result.figures.capacity_ratio < 0.98)
+      result.remarks.push_back(fmt::format(
+          "The passage swallows {:.0f} % of the gas that the jet offers; the rest spills past it.",
+          100.0 * result.figures.capacity_ratio));
+    if (result.wheel && result.figures.tangential_force_n_m < 0.0)
+      result.remarks.push_back("The gas brakes the wheel: this speed is beyond runaway.");
+    if (figures_.size() < meshes_.levels.size())
+      result.remarks.push_back("The error bars rest on fewer than three meshes.");
+    if (case_.friction) result.remarks.push_back("Friction is not counted in this version.");
+    if (case_.kind == CaseKind::wheel && case_.rim == "open")
+      result.remarks.push_back("Spill over the open rim is not counted in this version.");
+  }
+
+  const Case& case_;
+  const mesh::MeshLevels& meshes_;
+  const OperatingPoint& point_;
+  const LevelStates& before_;
+  RunObserver& observer_;
+  SolvedPoint solved_;
+  std::vector<post::PassageFigures> figures_;
+  solver::FlowSolution finest_;
+};
+
+}  // namespace
+
+SolvedPoint solve_point(const Case& input, const mesh::MeshLevels& meshes,
+                        const OperatingPoint& point, const LevelStates& before,
+                        RunObserver& observer) {
+  return PointSolver(input, meshes, point, before, observer).solve();
+}
+
+}  // namespace falcate::cases
