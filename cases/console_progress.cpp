@@ -28,8 +28,7 @@ double ConsoleProgress::share_done(const PointProgress& progress) {
 
 std::string ConsoleProgress::bar(double share, int width) {
   const int full = static_cast<int>(std::lround(std::clamp(share, 0.0, 1.0) * width));
-  return "[" + std::string(static_cast<std::size_t>(full), '#') +
-         std::string(static_cast<std::size_t>(width - full), '.') + "]";
+  return fmt::format("[{:#<{}}{:.<{}}]", "", full, "", width - full);
 }
 
 void ConsoleProgress::meshed(int points, int kept, int cells) {

@@ -119,7 +119,7 @@ std::vector<KeyRow> make_key_table() {
     {"blade", "file", &Case::outline_file, D::none, "", 0, 0, Need::special, "", Applies::any, "",
      "Outline of the blade: columns x,y (or side,x,y) in a CSV file beside the case file, any unit of length, scaled to the width. Coordinates.", ""},
 
-    {"flow", "cells", &Case::cells, D::none, "", 200, 500000, Need::optional, "8000", Applies::any, "",
+    {"flow", "cells", &Case::cells, D::none, "", 1000, 500000, Need::optional, "8000", Applies::any, "",
      "Cells of the finest of three nested meshes, about.", "8000 is right for most work"},
     {"flow", "friction", &Case::friction, D::none, "", 0, 0, Need::optional, "false", Applies::any, "",
      "Friction on blades and end walls. This version computes without it and says so in the results if it is asked for.", ""},

@@ -36,7 +36,8 @@ std::optional<std::string> nearest_word(const std::string& word,
   std::optional<std::string> nearest;
   int least = std::max(1, static_cast<int>(word.size()) / 3) + 1;
   for (const std::string& candidate : list) {
-    const int distance = edit_distance(plain(word), plain(candidate));
+    const bool cut_short = word.size() > 2 && plain(candidate).starts_with(plain(word));
+    const int distance = cut_short ? 1 : edit_distance(plain(word), plain(candidate));
     if (distance < least) {
       least = distance;
       nearest = candidate;

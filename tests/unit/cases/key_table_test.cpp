@@ -1,5 +1,6 @@
 #include "cases/key_table.h"
 
+#include <fmt/format.h>
 #include <gtest/gtest.h>
 
 #include <fstream>
@@ -39,7 +40,7 @@ std::string value_for(const KeyRow& row, double number) {
   else
     text << '"' << number << ' ' << row.unit << '"';
   if (std::holds_alternative<std::vector<double> Case::*>(row.target))
-    return "[" + text.str() + "]";
+    return fmt::format("[{}]", text.str());
   return text.str();
 }
 

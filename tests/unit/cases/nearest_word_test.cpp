@@ -18,6 +18,7 @@ TEST(NearestWord, OffersTheNearestAndNothingFarAway) {
   EXPECT_EQ(nearest_word("blade_cuont", keys), "blade_count");
   EXPECT_EQ(nearest_word("bladeCount", keys), "blade_count");
   EXPECT_EQ(nearest_word("sped", keys), "speed");
+  EXPECT_EQ(nearest_word("ring", {"open", "ringed"}), "ringed");
   EXPECT_EQ(nearest_word("colour", keys), std::nullopt);
 }
 
