@@ -86,6 +86,7 @@ void add_with_error_bars(LineFigure& figure, const Curve& curve) {
   figure.curves.back().style = LineStyle::line_with_points;
   figure.curves.push_back(curve);
   figure.curves.back().style = LineStyle::error_bars;
+  figure.curves.back().title.clear();
 }
 
 Curve extension(double x1, double y1, double x2, double y2) {
@@ -140,13 +141,21 @@ std::string convergence_figure(const std::vector<PointResult>& points, std::size
 }
 
 std::string efficiency_figure(const SpeedLine& line, const std::string& id) {
-  LineFigure figure = speed_figure(line, "blade efficiency, %");
+  LineFigure figure = speed_figure(line, "efficiency, %");
   const double factor = speed_axis(line).factor;
   Curve curve;
   curve.x = times(line.speed_rpm, factor);
   curve.y = times(line.blade_efficiency, 100.0);
   curve.error = times(line.blade_efficiency_error, 100.0);
+  curve.title = "blade";
   add_with_error_bars(figure, curve);
+  if (line.wheel_efficiency.size() == line.speed_rpm.size()) {
+    curve.y = times(line.wheel_efficiency, 100.0);
+    curve.error = times(line.wheel_efficiency_error, 100.0);
+    curve.title = "wheel, total to static";
+    curve.colour = 3;
+    add_with_error_bars(figure, curve);
+  }
   figure.y_from_zero = true;
   if (line.best_speed_rpm) {
     figure.marks.push_back(

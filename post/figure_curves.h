@@ -18,7 +18,7 @@ std::string convergence_figure(const std::vector<PointResult>& points, std::size
                                const std::string& id);
 bool has_history(const PointResult& point);
 
-/// Blade efficiency with error bars against speed; the best speed marked.
+/// Blade and wheel efficiency with error bars against speed; the best speed marked.
 std::string efficiency_figure(const SpeedLine& line, const std::string& id);
 
 /// Torque with error bars against speed; stall torque and runaway speed marked, dashed where they

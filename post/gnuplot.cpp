@@ -207,6 +207,7 @@ std::string script_of(const LineFigure& figure, const std::string& id) {
   std::string script =
       fmt::format("set terminal svg size {},{} noenhanced font 'Helvetica,14' name {}\n",
                   figure.width, figure.height, gnuplot_quoted(id));
+  script += "set pointintervalbox 0\n";  // a cleared box would hide short error bars
   script += axes_commands(figure);
   for (const Mark& mark : figure.marks) script += mark_commands(mark);
   std::string plot;

@@ -49,7 +49,7 @@ CascadeView cascade_view(const ReportInput& input, const PictureField& picture,
                          const std::string& id, const std::string& label) {
   const PointResult* point = find_point(input, picture.point_id);
   CascadeView view{picture.mesh, input.blade, 3,    point != nullptr && point->wheel,
-                   470.0,        id,          label};
+                   400.0,        id,          label};
   if (&picture != &input.pictures.front()) view.passages = 2;
   if (&picture != &input.pictures.front()) view.width = 260.0;
   return view;
@@ -89,8 +89,11 @@ std::string flow_section(const ReportInput& input) {
   if (input.pictures.size() < 2) return out;
   out += "<h3>The other points</h3>\n<div class=\"many\">\n";
   for (std::size_t i = 1; i < input.pictures.size(); ++i) {
-    out += mach_figure(input, input.pictures[i], fmt::format("mach{}", i), "") +
-           pressure_figure(input, input.pictures[i], fmt::format("pressure{}", i), "");
+    out += mach_figure(input, input.pictures[i], fmt::format("mach{}", i), "");
+  }
+  out += "</div>\n<div class=\"many\">\n";
+  for (std::size_t i = 1; i < input.pictures.size(); ++i) {
+    out += pressure_figure(input, input.pictures[i], fmt::format("pressure{}", i), "");
   }
   return out + "</div>\n";
 }
@@ -130,12 +133,13 @@ std::string surface_section(const ReportInput& input) {
 std::string speed_section(const ReportInput& input) {
   if (!input.speed_line || input.speed_line->speed_rpm.size() < 2) return "";
   const SpeedLine& line = *input.speed_line;
-  std::string out = "<div class=\"pair\">\n" +
-                    figure(efficiency_figure(line, "efficiency"),
-                           "Blade efficiency; the bars are the numerical error.") +
-                    figure(torque_figure(line, "torque"),
-                           "Torque; the bars are the numerical error, dashes are extrapolated.") +
-                    "</div>\n";
+  std::string out =
+      "<div class=\"pair\">\n" +
+      figure(efficiency_figure(line, "efficiency"),
+             "Efficiency of the blades and of the wheel; the bars are the numerical error.") +
+      figure(torque_figure(line, "torque"),
+             "Torque; the bars are the numerical error, dashes are extrapolated.") +
+      "</div>\n";
   for (const auto& caution : cautions_about(input, {"speed", "stress", "overspeed"})) {
     out += fmt::format("<p class=\"caution\">{}</p>\n", escape_html(caution));
   }

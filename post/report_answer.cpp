@@ -79,6 +79,12 @@ void add_speed_line_numbers(const ReportInput& input, std::vector<KeyNumber>& nu
   if (!input.speed_line) return;
   const SpeedLine& line = *input.speed_line;
   const auto [factor, unit] = torque_unit(line);
+  if (line.best_wheel_speed_rpm && line.best_wheel_efficiency && line.speed_rpm.size() > 1 &&
+      std::abs(*line.best_wheel_speed_rpm - line.best_speed_rpm.value_or(0.0)) >
+          0.01 * *line.best_wheel_speed_rpm) {
+    numbers.push_back({"Best wheel efficiency, at " + rpm(*line.best_wheel_speed_rpm),
+                       number_text(100.0 * *line.best_wheel_efficiency, 3) + " %", ""});
+  }
   if (line.stall_torque_n_m) {
     numbers.push_back({"Stall torque",
                        fmt::format("{} {}", number_text(factor * *line.stall_torque_n_m, 3), unit),

@@ -34,7 +34,7 @@ gap:1.2rem 2rem;align-items:start}
 .many{display:grid;grid-template-columns:repeat(auto-fill,minmax(min(100%,18rem),1fr));gap:1rem 1.6rem}
 figure{margin:.6rem 0}
 figure svg{display:block;max-width:100%;height:auto}
-figure.large svg{width:100%;max-width:44rem}
+figure.large svg{width:100%;max-width:40rem}
 figcaption{font-size:.88rem;color:var(--quiet);margin-top:.3rem;max-width:40rem}
 .scroll{overflow-x:auto;margin:.6rem 0 1.2rem}
 table{border-collapse:collapse;font-size:.9rem;font-variant-numeric:tabular-nums}

@@ -196,6 +196,8 @@ inline Report report(int speeds, int cells_across) {
       line.speed_ratio.push_back(point.speed_ratio);
       line.blade_efficiency.push_back(point.figures.blade_efficiency);
       line.blade_efficiency_error.push_back(point.numerical_error.blade_efficiency);
+      line.wheel_efficiency.push_back(point.figures.wheel_efficiency);
+      line.wheel_efficiency_error.push_back(point.numerical_error.wheel_efficiency);
       line.torque_n_m.push_back(point.figures.torque_n_m);
       line.torque_error_n_m.push_back(point.numerical_error.torque_n_m);
       line.power_w.push_back(point.figures.power_w);
