@@ -211,8 +211,9 @@ std::string marked_line(const ContourField& field, const FieldScale& scale, cons
       svg::path_data(stage.view, lines, false));
 }
 
-std::string line_key(const FieldScale& scale, const Stage& stage) {
+std::string line_key(const ContourField& field, const FieldScale& scale, const Stage& stage) {
   if (!scale.marked_line || scale.marked_words.empty()) return "";
+  if (*scale.marked_line <= field.least() || *scale.marked_line > field.greatest()) return "";
   const double x = stage.view.x0 + stage.width, y = stage.view.y0 + stage.height + 14.0;
   return svg::text(x, y + 5, scale.marked_words, "end") +
          svg::line(x - 8.2 * static_cast<double>(scale.marked_words.size()) - 34, y,
@@ -277,13 +278,14 @@ std::string field_picture(const CascadeView& view, const std::vector<double>& ce
   const ContourField field(*view.mesh, cell_values);
   const Levels levels = make_levels(field.least(), field.greatest());
   const Stage stage = make_stage(view, window_of(view));
-  const std::string body =
-      clip(stage, view.id) + fmt::format("<g clip-path=\"url(#{}clip)\">", view.id) +
-      filled_bands(view, field, levels, stage) +
-      repeated(view, stage, "line", marked_line(field, scale, stage), stage.first_copy,
-               stage.last_copy) +
-      blades(view, stage) + "</g>" + frame(stage) + scale_bar(stage) + line_key(scale, stage) +
-      motion_arrow(view, stage) + colour_bar(stage, levels, scale.title);
+  const std::string body = clip(stage, view.id) +
+                           fmt::format("<g clip-path=\"url(#{}clip)\">", view.id) +
+                           filled_bands(view, field, levels, stage) +
+                           repeated(view, stage, "line", marked_line(field, scale, stage),
+                                    stage.first_copy, stage.last_copy) +
+                           blades(view, stage) + "</g>" + frame(stage) + scale_bar(stage) +
+                           line_key(field, scale, stage) + motion_arrow(view, stage) +
+                           colour_bar(stage, levels, scale.title);
   return svg::document(stage.width + margin + 116.0, stage.height + 40.0, view.label, body);
 }
 

@@ -119,6 +119,9 @@ std::string inline_element(const std::string& gnuplot_svg, const LineFigure& fig
   static const std::regex filters("<filter[\\s\\S]*?</filter>");
   static const std::regex empty_groups("<g fill=\"none\"[^>]*>\\s*</g>\\s*");
   static const std::regex fonts("font-family=\"[^\"]*\"");
+  // White discs cleared round the points would hide short error bars, and shine on a dark page.
+  static const std::regex discs("<use [^>]*color='white'/>");
+  body = std::regex_replace(body, discs, "");
   body = std::regex_replace(body, filters, "");
   body = std::regex_replace(body, empty_groups, "");
   body = std::regex_replace(body, fonts, "");
@@ -207,7 +210,6 @@ std::string script_of(const LineFigure& figure, const std::string& id) {
   std::string script =
       fmt::format("set terminal svg size {},{} noenhanced font 'Helvetica,14' name {}\n",
                   figure.width, figure.height, gnuplot_quoted(id));
-  script += "set pointintervalbox 0\n";  // a cleared box would hide short error bars
   script += axes_commands(figure);
   for (const Mark& mark : figure.marks) script += mark_commands(mark);
   std::string plot;

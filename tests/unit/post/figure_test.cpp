@@ -168,9 +168,18 @@ TEST(TriangleFigure, WheelAtRestIsDrawn) {
   EXPECT_EQ(arrows(svg, svg::accent).size(), 1u);
 }
 
+TEST_F(CascadePicture, LineIsExplainedOnlyWhereThereIsOne) {
+  const auto words = [&](double level) {
+    return field_picture(view_, mach_, {"Mach number", level, "the line"}).find("the line</text>");
+  };
+  EXPECT_NE(words(1.2), std::string::npos);
+  EXPECT_EQ(words(9.0), std::string::npos);
+}
+
 TEST(Curves, SpeedFiguresMarkWhatTheyAreMadeFor) {
   const auto report = invented::report(2, 6);
   const std::string efficiency = efficiency_figure(*report.input.speed_line, "e");
+  EXPECT_EQ(efficiency.find("color='white'/>"), std::string::npos);
   EXPECT_NE(efficiency.find("highest computed 23\u202f000 rpm"), std::string::npos);
   const std::string torque = torque_figure(*report.input.speed_line, "t");
   EXPECT_NE(torque.find("runaway 168\u202f000 rpm"), std::string::npos);
