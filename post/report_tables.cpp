@@ -138,7 +138,8 @@ std::string solution_table(const ReportInput& input) {
     out += fmt::format(
         "<tr><th scope=\"row\">{}</th><td>{}</td><td>{}</td><td>{:.1e}</td><td>{}</td><td>{}</td>"
         "<td>{}</td></tr>\n",
-        escape_html(point_name(point)), point.cells, status_words(point.solution.status),
+        escape_html(point_name(point)), point.cells,
+        stands(point) ? status_words(point.solution.status) : "failed",
         point.solution.residual_drop, point.solution.newton_steps,
         point.solution.residual_evaluations,
         stands(point) ? fmt::format("{:.1e}", point.figures.mass_imbalance) : "");
