@@ -51,8 +51,8 @@ std::string problems_of(const KeyRow& row, const std::string& value) {
   std::string text = *row.table ? "" : std::string(row.key) + " = " + value + "\n";
   text += rig ? "[row]\n" : "[supply]\n";
   if (*row.table && std::string(row.table) != (rig ? "row" : "supply"))
-    text += "[" + std::string(row.table) + "]\n";
-  if (*row.table) text += std::string(row.key) + " = " + value + "\n";
+    text += fmt::format("[{}]\n", row.table);
+  if (*row.table) text += fmt::format("{} = {}\n", row.key, value);
   std::string found;
   try {
     read_case(folder.write("case.toml", text));
