@@ -110,8 +110,8 @@ BladeOutline cup_blade(const CupParameters& p) {
   const Point nose = convex_in.front().point(0.0);
   const Point by(-nose.x(), -nose.y());
   const auto arc = [&](double rr) { return arc_piece({0.0, 0.0}, rr, kPi - in, out); };
-  const BladeOutline cup(assemble(convex_in, arc(radius + half), convex_out, by),
-                         assemble(concave_in, arc(radius - half), concave_out, by));
+  BladeOutline cup(assemble(convex_in, arc(radius + half), convex_out, by),
+                   assemble(concave_in, arc(radius - half), concave_out, by));
   if (const double gap = throat_width(cup, p.pitch); !(gap > 0.0)) {
     throw ShapeError(
         fmt::format("cup blade: neighbours touch at a pitch of {:.4g} mm: take fewer blades, a "

@@ -5,6 +5,7 @@
 #include <cstddef>
 #include <limits>
 #include <map>
+#include <numbers>
 #include <utility>
 
 namespace falcate::mesh {
@@ -253,7 +254,8 @@ void improve(CurvedMesh& mesh, const CellQuality& quality, const Mover& mover, d
     bool better = false;
     for (int k = 0; k < 8; ++k) {
       const auto before = mesh.nodes[at(mover.nodes.front())];
-      const Point by = step * Point(std::cos(0.25 * M_PI * k), std::sin(0.25 * M_PI * k));
+      const Point by = step * Point(std::cos(0.25 * std::numbers::pi * k),
+                                    std::sin(0.25 * std::numbers::pi * k));
       move(by);
       if (const double now = worst_around(quality, mover); now > best + 1e-9) {
         best = now;
