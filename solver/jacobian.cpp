@@ -92,8 +92,9 @@ Jacobian::Jacobian(const Residual& residual)
       matrix_(pattern_of(residual)),
       faces_(static_cast<std::size_t>(residual.mesh().interior_face_count())) {}
 
-void Jacobian::assemble(std::span<const State<double>> cells) {
+void Jacobian::assemble(std::span<const State<double>> cells, double second_order_part) {
   matrix_.set_zero();
+  part_ = second_order_part;
   gradients_ = residual_.gradients(cells);
   interior(cells);
   gather_interior();
@@ -122,10 +123,10 @@ void Jacobian::interior(std::span<const State<double>> cells) {
             D::seeded(sign * gradients_[own].along(k, g.difference), 2),
             D::seeded(gradients_[own].along(k, g.offset), 3), g.threshold[k]);
         value[s][k] = out.value;
-        side[s]->own[k] = out.derivative[0];
-        side[s]->other[k] = out.derivative[1];
-        side[s]->along_difference[k] = sign * out.derivative[2];
-        side[s]->along_offset[k] = out.derivative[3];
+        side[s]->own[k] = part_ * out.derivative[0] + 1.0 - part_;
+        side[s]->other[k] = part_ * out.derivative[1];
+        side[s]->along_difference[k] = part_ * sign * out.derivative[2];
+        side[s]->along_offset[k] = part_ * out.derivative[3];
       }
     }
     const auto& n = mesh.faces()[f].normal;
@@ -181,7 +182,7 @@ void Jacobian::walls(std::span<const State<double>> cells,
     };
     add(face.left, slopes[0]);
     for (const auto& neighbour : residual_.stencil().of(face.left)) {
-      const double slope = slopes[1] * neighbour.weight.dot(offset);
+      const double slope = part_ * slopes[1] * neighbour.weight.dot(offset);
       add(neighbour.cell, slope);
       add(face.left, -slope);
     }

@@ -12,8 +12,9 @@ namespace falcate::solver {
 class Jacobian {
  public:
   explicit Jacobian(const Residual& residual);
-  /// `matrix()` becomes dR/dq at `cells`.
-  void assemble(std::span<const State<double>> cells);
+  /// `matrix()` becomes dR/dq at `cells`; with a `second_order_part` below 1 the derivative of face
+  /// values is moved that far towards those of the first-order scheme (for preconditioners).
+  void assemble(std::span<const State<double>> cells, double second_order_part = 1.0);
   BlockMatrix& matrix() { return matrix_; }
   const BlockMatrix& matrix() const { return matrix_; }
 
@@ -38,6 +39,7 @@ class Jacobian {
   BlockMatrix matrix_;
   std::vector<FaceDerivative> faces_;
   std::vector<Gradient<double>> gradients_;
+  double part_ = 1.0;
 };
 
 }  // namespace falcate::solver

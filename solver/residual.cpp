@@ -5,12 +5,11 @@
 namespace falcate::solver {
 namespace {
 
-/// e = (K h/L)^3 scale^2, scales those of a flow of the reference speed (pressure rho w^2/2).
+/// e = (K h/L)^3 times the squares of the values at rest, where speed of sound^2 = gamma: changes
+/// far below those of a shock are never limited, however slow the flow.
 State<double> limiter_threshold(double h, const ScaledProblem& problem, double constant) {
-  const double ratio = std::pow(constant * h / problem.reference_length, 3);
-  const double w = problem.reference_speed, head = 0.5 * w * w;
-  const double compression = head / problem.gamma;
-  return {ratio * compression * compression, ratio * w * w, ratio * w * w, ratio * head * head};
+  const double e = std::pow(constant * h / problem.reference_length, 3);
+  return {e, problem.gamma * e, problem.gamma * e, e};
 }
 
 }  // namespace

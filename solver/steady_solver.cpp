@@ -42,6 +42,8 @@ class March {
         options_(options),
         residual_(problem_, options.scheme),
         jacobian_(residual_),
+        rough_(residual_),
+        preconditioner_(rough_.matrix(), options.level_of_fill),
         cells_(cold_start(problem, problem_)),
         cfl_(options.initial_cfl) {
     refresh_planes(problem_, cells_);
@@ -66,8 +68,10 @@ class March {
       evaluate();
     }
     jacobian_.assemble(cells_);
+    rough_.assemble(cells_, options_.preconditioner_order);
     evaluations_ += 2;
-    add_pseudo_time();
+    add_pseudo_time(jacobian_.matrix());
+    add_pseudo_time(rough_.matrix());
     const Vector change = solve_linear();
     advance(change);
     return {number, drop(), cfl_, linear_.iterations};
@@ -94,9 +98,8 @@ class March {
   }
 
   /// V M / dt on the diagonal; V / dt = (sum of face wave speeds) / CFL.
-  void add_pseudo_time() {
+  void add_pseudo_time(BlockMatrix& matrix) const {
     const auto speeds = residual_.spectral_sums(cells_);
-    BlockMatrix& matrix = jacobian_.matrix();
     for (int i = 0; i < matrix.rows(); ++i) {
       const auto ui = static_cast<std::size_t>(i);
       const auto m = conserved_by_primitive(cells_[ui], problem_.gamma);
@@ -105,7 +108,7 @@ class March {
   }
 
   Vector solve_linear() {
-    preconditioner_.factor(jacobian_.matrix());
+    preconditioner_.factor(rough_.matrix());
     Vector change = Vector::Zero(4 * static_cast<Eigen::Index>(cells_.size()));
     const double tolerance = std::clamp(0.1 * drop(), 1e-4, 1e-2);
     linear_ = gmres([&](const Vector& x, Vector& y) { jacobian_.matrix().multiply(x, y); },
@@ -173,7 +176,7 @@ class March {
   ScaledProblem problem_;
   SteadyOptions options_;
   Residual residual_;
-  Jacobian jacobian_;
+  Jacobian jacobian_, rough_;
   IncompleteLu preconditioner_;
   Cells cells_, sums_;
   std::vector<State<double>> fluxes_;

@@ -1,7 +1,8 @@
 /// Steady flow of one passage by pseudo-transient Newton-Krylov with exact linearisation.
 ///
 /// Each step solves (V M / dt + dR/dq) dq = -R, M = dU/dq, dt = CFL V / sum of face wave speeds, by
-/// GMRES preconditioned with block ILU(0) of the same matrix; CFL grows as the residual falls, so
+/// GMRES preconditioned with block ILU(k) of a matrix half-way to that of the first-order scheme
+/// (factors of the second-order one alone are unstable at low Mach number); CFL grows as the residual falls, so
 /// the last steps are Newton's own.
 /// Sources: Kelley & Keyes, SIAM J. Numer. Anal. 35(2) (1998) 508-523 (pseudo-transient
 /// continuation); Knoll & Keyes, J. Comput. Phys. 193 (2004) 357-397.
@@ -19,6 +20,8 @@ struct SteadyOptions {
   double residual_drop = 1e-11;  ///< stop when |R| <= residual_drop * |R of the cold start|
   int max_steps = 150;           ///< Newton steps
   double initial_cfl = 10.0;
+  double preconditioner_order = 0.5;  ///< second-order part of the preconditioner's matrix, 0 to 1
+  int level_of_fill = 2;              ///< of the preconditioner
   SchemeOptions scheme;
 };
 
