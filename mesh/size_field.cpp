@@ -24,7 +24,7 @@ double coarsening(const SizeRules& rules) {
 std::vector<Source> sources_of(const std::vector<WallSample>& walls, const SizeRules& rules) {
   std::vector<Source> sources;
   // A tenth of the base is where growth at the limited gradient costs no more cells than the row.
-  const double floor = 0.1 * rules.base;
+  const double floor = 0.05 * rules.base;
   const double share = rules.curvature_share * coarsening(rules);
   for (const auto& wall : walls) {
     const double size = wall.radius > 0.0 ? std::max(floor, share * wall.radius) : 0.5 * rules.base;
@@ -51,8 +51,8 @@ double base_at(const SizeRules& rules, double x) {
   const double margin = 0.05 * rules.width;
   const double out = std::max({0.0, -margin - x, x - rules.width - margin});
   const double row = std::min(rules.base, coarsening(rules) * rules.gap / 4.0);
-  const double most = std::max(row, std::min(2.5 * rules.base, rules.pitch / 4.0));
-  return std::min(row + 0.8 * rules.gradient * out, most);
+  const double most = std::max(row, std::min(4.0 * rules.base, rules.pitch / 4.0));
+  return std::min(row + rules.gradient * out, most);
 }
 
 bool inside(const std::vector<Point>& polygon, const Point& p) {

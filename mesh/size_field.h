@@ -30,8 +30,8 @@ struct SizeRules {
   double gap;   ///< least distance between neighbours: four edges across it
   double pitch, width;
   double inlet_x, outlet_x;
-  double gradient = 0.15;
-  double curvature_share = 0.6;  ///< edge length / radius of curvature of the wall
+  double gradient = 0.2;
+  double curvature_share = 0.15;  ///< edge length / radius of curvature of the wall
 };
 
 SizeField make_size_field(const std::vector<WallSample>& walls, const SizeRules& rules);
