@@ -19,7 +19,13 @@ struct InletCondition {
   double total_temperature = 0.0;  ///< K
   double angle = 0.0;              ///< rad from the plane of rotation
   std::optional<double> mach;
+  /// The row does not swallow the supersonic stream: it enters subsonic, behind a normal shock at
+  /// `mach`, at the same angle, and what is not swallowed spills past.
+  bool behind_shock = false;
 };
+
+/// Total pressure that enters the row, Pa: behind the normal shock where there is one.
+double entering_total_pressure(const InletCondition& inlet, const Gas& gas);
 
 struct FlowProblem {
   const mesh::PassageMesh* mesh = nullptr;

@@ -10,7 +10,7 @@ namespace {
 using mesh::PatchKind;
 
 Units units_of(const FlowProblem& problem) {
-  const double p0 = problem.inlet.total_pressure;
+  const double p0 = entering_total_pressure(problem.inlet, problem.gas);
   const double rt = problem.gas.gas_constant * problem.inlet.total_temperature;
   return {p0 / rt, std::sqrt(rt), p0};
 }
@@ -50,7 +50,9 @@ InletStream inlet_stream(const FlowProblem& problem) {
   s.cotangent = std::cos(in.angle) / std::sin(in.angle);
   const double mach = in.mach.value_or(0.0);
   s.given = isentropic_state(mach, in.angle, gamma);
-  if (mach * std::sin(in.angle) >= 1.0) {
+  if (in.behind_shock) {
+    s.regime = InletRegime::subsonic;
+  } else if (mach * std::sin(in.angle) >= 1.0) {
     s.regime = InletRegime::axially_supersonic;
   } else if (mach > 1.0) {
     s.regime = InletRegime::simple_wave;
@@ -86,6 +88,10 @@ class MeanDirection {
     });
   }
   bool empty() const { return last_ < first_; }
+  /// 0 upstream of the blades, 1 downstream, linear between.
+  double way(double x) const {
+    return empty() ? 0.0 : std::clamp((x - first_) / (last_ - first_), 0.0, 1.0);
+  }
   /// rad from the plane of rotation; the inlet angle upstream, the last blade direction downstream.
   double angle(double x, double inlet_angle) const {
     if (empty() || x < first_) return inlet_angle;
@@ -130,11 +136,28 @@ std::vector<State<double>> prescribed_states(const FlowProblem& problem, const U
 }
 
 double exit_mach(const FlowProblem& problem) {
-  return isentropic_mach(problem.exit_pressure / problem.inlet.total_pressure,
-                         problem.gas.heat_capacity_ratio);
+  return isentropic_mach(
+      problem.exit_pressure / entering_total_pressure(problem.inlet, problem.gas),
+      problem.gas.heat_capacity_ratio);
+}
+
+/// Mach number of the first guess at the inlet.
+double starting_mach(const FlowProblem& problem) {
+  if (problem.inlet.behind_shock) return std::min(exit_mach(problem), 0.7);
+  return problem.inlet.mach.value_or(exit_mach(problem));
 }
 
 }  // namespace
+
+double entering_total_pressure(const InletCondition& inlet, const Gas& gas) {
+  const double mach = inlet.mach.value_or(0.0), g = gas.heat_capacity_ratio;
+  if (!inlet.behind_shock || mach <= 1.0) return inlet.total_pressure;
+  // Normal shock: Ames Research Staff, NACA Report 1135 (1953), eq. 99.
+  const double m2 = mach * mach;
+  return inlet.total_pressure *
+         std::pow((g + 1.0) * m2 / ((g - 1.0) * m2 + 2.0), g / (g - 1.0)) *
+         std::pow((g + 1.0) / (2.0 * g * m2 - (g - 1.0)), 1.0 / (g - 1.0));
+}
 
 ScaledProblem scale(const FlowProblem& problem) {
   if (!problem.mesh || problem.inlet.total_pressure <= 0.0 ||
@@ -146,7 +169,7 @@ ScaledProblem scale(const FlowProblem& problem) {
   s.units = units_of(problem);
   s.inlet = inlet_stream(problem);
   s.outlet.gamma = s.gamma;
-  s.outlet.pressure = problem.exit_pressure / problem.inlet.total_pressure;
+  s.outlet.pressure = problem.exit_pressure / s.units.pressure;
   s.inlet_planes = planes_of(*problem.mesh, PatchKind::inlet);
   s.outlet_planes = planes_of(*problem.mesh, PatchKind::outlet);
   s.prescribed = prescribed_states(problem, s.units);
@@ -186,7 +209,7 @@ void refresh_planes(ScaledProblem& problem, std::span<const State<double>> cells
 std::vector<State<double>> cold_start(const FlowProblem& problem, const ScaledProblem& scaled) {
   const auto& mesh = *problem.mesh;
   const MeanDirection direction(mesh);
-  const double mach = problem.inlet.mach.value_or(exit_mach(problem));
+  const double mach = starting_mach(problem);
   std::vector<State<double>> cells;
   for (const mesh::Point& x : mesh.centroids())
     cells.push_back(
