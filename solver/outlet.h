@@ -78,17 +78,18 @@ T pressure_level(std::span<const State<T>> cells, std::span<const T> half, const
                   Dual<1>(value_of(cells[i][2])), Dual<1>(value_of(cells[i][3]))});
     hv.emplace_back(value_of(half[i]));
   }
-  double level = s.pressure, slope = 1.0;
-  for (int step = 0; step < 50; ++step) {
+  double level = s.pressure, slope = 1.0, change = level;
+  for (int step = 0; step < 50 && std::abs(change) > 1e-15 * level; ++step) {
     const auto error = pressure_error<Dual<1>>(cv, hv, Dual<1>::seeded(level, 0), s, waves);
+    slope = error.derivative[0];
     // Away from the answer the slope can be poor: stay near the plain one-to-one step.
-    slope = std::min(std::max(error.derivative[0], 0.3), 3.0);
-    const double change = std::min(error.value / slope, 0.5 * level);
+    change = std::clamp(error.value / std::clamp(slope, 0.3, 3.0), -level, 0.5 * level);
     level -= change;
-    if (std::abs(change) <= 1e-15 * level) break;
   }
-  const auto at = pressure_error<Dual<1>>(cv, hv, Dual<1>::seeded(level, 0), s, waves);
-  return T(level) - pressure_error<T>(cells, half, T(level), s, waves) / at.derivative[0];
+  // Where a first guess has no such level (the mean stream would be axially supersonic) the plain
+  // pressure serves until the flow nears its answer.
+  if (!(std::abs(change) <= 1e-12 * level) || level < 0.1 * s.pressure) return T(s.pressure);
+  return T(level) - pressure_error<T>(cells, half, T(level), s, waves) / slope;
 }
 
 template <class T>

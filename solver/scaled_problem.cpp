@@ -209,11 +209,11 @@ void refresh_planes(ScaledProblem& problem, std::span<const State<double>> cells
 std::vector<State<double>> cold_start(const FlowProblem& problem, const ScaledProblem& scaled) {
   const auto& mesh = *problem.mesh;
   const MeanDirection direction(mesh);
-  const double mach = starting_mach(problem);
+  const double first = starting_mach(problem), last = exit_mach(problem);
   std::vector<State<double>> cells;
   for (const mesh::Point& x : mesh.centroids())
-    cells.push_back(
-        isentropic_state(mach, direction.angle(x.x(), problem.inlet.angle), scaled.gamma));
+    cells.push_back(isentropic_state(first + (last - first) * direction.way(x.x()),
+                                     direction.angle(x.x(), problem.inlet.angle), scaled.gamma));
   return cells;
 }
 
