@@ -40,7 +40,11 @@ class PointSolver {
   SolvedPoint solve() {
     describe();
     try {
-      for (std::size_t level = 0; level < meshes_.levels.size(); ++level) solve_level(level);
+      if (!solve_levels() && supersonic_entry()) {
+        behind_shock_ = true;
+        forget();
+        solve_levels();
+      }
       gather();
     } catch (const std::exception& error) {
       solved_.result.failure = error.what();
@@ -60,11 +64,40 @@ class PointSolver {
     result.cells = meshes_.levels.back().cell_count();
   }
 
+  /// Relative flow faster than sound, its axial part slower: the row may not swallow it.
+  bool supersonic_entry() const {
+    const double mach = point_.inlet.mach.value_or(0.0);
+    return mach > 1.0 && mach * std::sin(point_.inlet.angle) < 1.0;
+  }
+
+  /// Coarse to fine; false as soon as the stream turns out not to be swallowed as it comes.
+  bool solve_levels() {
+    for (std::size_t level = 0; level < meshes_.levels.size(); ++level) {
+      solve_level(level);
+      if (!behind_shock_ && supersonic_entry() && !swallowed()) return false;
+    }
+    return true;
+  }
+
+  /// A steady flow whose inlet is clear of the sonic limit, where simple waves end.
+  bool swallowed() const {
+    constexpr double clear_of_sonic = 1.02;
+    return finest_.summary.status != solver::SolutionStatus::failed &&
+           figures_.back().inlet.mach >= clear_of_sonic;
+  }
+
+  void forget() {
+    for (States& states : solved_.states) states.clear();
+    figures_.clear();
+    solved_.result.remarks.clear();
+  }
+
   solver::FlowProblem problem(std::size_t level) const {
     solver::FlowProblem problem;
     problem.mesh = &meshes_.levels[level];
     problem.gas = case_.gas;
     problem.inlet = point_.inlet;
+    problem.inlet.behind_shock = behind_shock_;
     problem.exit_pressure = point_.exit_pressure;
     return problem;
   }
@@ -76,6 +109,9 @@ class PointSolver {
 
   States start(std::size_t level) const {
     const States coarse = prolonged(level, solved_.states);
+    // Between the starting limit and the limit of steady swallowing there are two flows: a stream
+    // faster than sound always starts cold, so that the point before does not choose between them.
+    if (supersonic_entry()) return coarse;
     const States before = level < before_.size() ? before_[level] : States{};
     if (level == 0 || before.empty()) return before.empty() ? coarse : before;
     const States coarse_before = prolonged(level, before_);
@@ -85,7 +121,8 @@ class PointSolver {
   }
 
   States second_start(std::size_t level) const {
-    const bool warm = level < before_.size() && !before_[level].empty();
+    const bool warm =
+        !supersonic_entry() && level < before_.size() && !before_[level].empty();
     return warm ? prolonged(level, solved_.states) : States{};
   }
 
@@ -148,6 +185,11 @@ class PointSolver {
 
   void add_remarks() {
     post::PointResult& result = solved_.result;
+    if (behind_shock_)
+      result.remarks.push_back(fmt::format(
+          "The passage does not start at relative Mach {:.2f}: a shock stands before the blades "
+          "(computed as a normal shock) and the gas enters below the speed of sound.",
+          *point_.inlet.mach));
     if (result.wheel && result.figures.capacity_ratio < 0.98)
       result.remarks.push_back(fmt::format(
           "The passage swallows {:.0f} % of the gas that the jet offers; the rest spills past it.",
@@ -169,6 +211,7 @@ class PointSolver {
   SolvedPoint solved_;
   std::vector<post::PassageFigures> figures_;
   solver::FlowSolution finest_;
+  bool behind_shock_ = false;
 };
 
 }  // namespace

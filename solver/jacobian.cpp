@@ -1,7 +1,6 @@
 #include "solver/jacobian.h"
 
 #include <algorithm>
-#include <set>
 
 namespace falcate::solver {
 namespace {
@@ -20,14 +19,14 @@ void for_each_face(const mesh::PassageMesh& mesh, bool (*wanted)(mesh::PatchKind
 
 bool is_prescribed(mesh::PatchKind kind) { return kind == mesh::PatchKind::prescribed; }
 
-void couple_planes(const Residual& residual, std::vector<std::set<int>>& columns) {
+void couple_planes(const Residual& residual, std::vector<std::vector<int>>& columns) {
   const auto couple = [&](const std::vector<Plane>& planes) {
     for (const Plane& plane : planes)
       for (std::size_t i = 0; i < plane.waves.size(); ++i)
         for (std::size_t j = 0; j < plane.waves.size(); ++j) {
           const auto& faces = residual.mesh().faces();
           const auto first = static_cast<std::size_t>(plane.first_face);
-          columns[static_cast<std::size_t>(faces[first + i].left)].insert(faces[first + j].left);
+          columns[static_cast<std::size_t>(faces[first + i].left)].push_back(faces[first + j].left);
         }
   };
   couple(residual.problem().inlet_planes);
@@ -36,13 +35,14 @@ void couple_planes(const Residual& residual, std::vector<std::set<int>>& columns
 
 /// Cells whose states each cell's residual depends on.
 std::vector<std::vector<int>> pattern_of(const Residual& residual) {
-  std::vector<std::set<int>> columns(static_cast<std::size_t>(residual.mesh().cell_count()));
+  const auto& mesh = residual.mesh();
+  std::vector<std::vector<int>> columns(static_cast<std::size_t>(mesh.cell_count()));
   const auto add_side = [&](int row, int side) {
-    auto& set = columns[static_cast<std::size_t>(row)];
-    set.insert(side);
-    for (const auto& neighbour : residual.stencil().of(side)) set.insert(neighbour.cell);
+    auto& list = columns[static_cast<std::size_t>(row)];
+    list.push_back(side);
+    for (const auto& neighbour : residual.stencil().of(side)) list.push_back(neighbour.cell);
   };
-  for (const auto& face : residual.mesh().faces()) {
+  for (const auto& face : mesh.faces()) {
     add_side(face.left, face.left);
     if (face.right < 0) continue;
     add_side(face.left, face.right);
@@ -50,9 +50,11 @@ std::vector<std::vector<int>> pattern_of(const Residual& residual) {
     add_side(face.right, face.right);
   }
   couple_planes(residual, columns);
-  std::vector<std::vector<int>> pattern;
-  for (const auto& set : columns) pattern.emplace_back(set.begin(), set.end());
-  return pattern;
+  for (auto& list : columns) {
+    std::sort(list.begin(), list.end());
+    list.erase(std::unique(list.begin(), list.end()), list.end());
+  }
+  return columns;
 }
 
 Block block_of(const State<Dual<4>>& f) {
@@ -90,20 +92,25 @@ std::array<double, 2> positive_step_slopes(double q, double step) {
 Jacobian::Jacobian(const Residual& residual)
     : residual_(residual),
       matrix_(pattern_of(residual)),
-      faces_(static_cast<std::size_t>(residual.mesh().interior_face_count())) {}
+      faces_(static_cast<std::size_t>(residual.mesh().interior_face_count())),
+      boundary_(static_cast<std::size_t>(residual.mesh().face_count()) - faces_.size()) {}
 
-void Jacobian::assemble(std::span<const State<double>> cells, double second_order_part) {
-  matrix_.set_zero();
-  part_ = second_order_part;
+void Jacobian::assemble(std::span<const State<double>> cells) {
   gradients_ = residual_.gradients(cells);
-  interior(cells);
-  gather_interior();
-  walls(cells, gradients_);
-  prescribed(cells, gradients_);
-  planes(cells);
+  linearise_interior(cells);
+  linearise_boundary(cells);
+  linearise_planes(cells);
+  assemble_blend(1.0, matrix_);
 }
 
-void Jacobian::interior(std::span<const State<double>> cells) {
+void Jacobian::assemble_blend(double second_order_part, BlockMatrix& out) const {
+  out.set_zero();
+  gather_interior(second_order_part, out);
+  gather_boundary(second_order_part, out);
+  for (const PlaneBlock& p : planes_) out.block(out.place(p.row, p.column)) += p.block;
+}
+
+void Jacobian::linearise_interior(std::span<const State<double>> cells) {
   const auto& mesh = residual_.mesh();
 #pragma omp parallel for schedule(static)
   for (int i = 0; i < mesh.interior_face_count(); ++i) {
@@ -111,33 +118,64 @@ void Jacobian::interior(std::span<const State<double>> cells) {
     const auto l = static_cast<std::size_t>(mesh.faces()[f].left);
     const auto r = static_cast<std::size_t>(mesh.faces()[f].right);
     const auto& g = residual_.geometry(f);
-    State<double> value[2];
-    SideDerivative* side[2] = {&faces_[f].left, &faces_[f].right};
-    for (std::size_t s = 0; s < 2; ++s) {
-      const std::size_t own = s == 0 ? l : r, other = s == 0 ? r : l;
-      const double sign = s == 0 ? 1.0 : -1.0;
+    const auto differentiate = [&](std::size_t own, std::size_t other, double sign,
+                                   SideDerivative& side) {
+      State<double> value;
       for (std::size_t k = 0; k < 4; ++k) {
         using D = Dual<4>;
         const D out = Residual::face_value<D>(
             k, D::seeded(cells[own][k], 0), D::seeded(cells[other][k], 1),
             D::seeded(sign * gradients_[own].along(k, g.difference), 2),
             D::seeded(gradients_[own].along(k, g.offset), 3), g.threshold[k]);
-        value[s][k] = out.value;
-        side[s]->own[k] = part_ * out.derivative[0] + 1.0 - part_;
-        side[s]->other[k] = part_ * out.derivative[1];
-        side[s]->along_difference[k] = part_ * sign * out.derivative[2];
-        side[s]->along_offset[k] = part_ * out.derivative[3];
+        value[k] = out.value;
+        side.own[k] = out.derivative[0];
+        side.other[k] = out.derivative[1];
+        side.along_difference[k] = sign * out.derivative[2];
+        side.along_offset[k] = out.derivative[3];
       }
-    }
+      return value;
+    };
+    const auto left = differentiate(l, r, 1.0, faces_[f].left);
+    const auto right = differentiate(r, l, -1.0, faces_[f].right);
     const auto& n = mesh.faces()[f].normal;
     const auto kind = residual_.options().flux;
     const double gamma = residual_.problem().gamma;
-    side[0]->flux = block_of(numerical_flux(kind, seeded(value[0]), constant(value[1]), n, gamma));
-    side[1]->flux = block_of(numerical_flux(kind, constant(value[0]), seeded(value[1]), n, gamma));
+    faces_[f].left.flux = block_of(numerical_flux(kind, seeded(left), constant(right), n, gamma));
+    faces_[f].right.flux = block_of(numerical_flux(kind, constant(left), seeded(right), n, gamma));
   }
 }
 
-void Jacobian::gather_interior() {
+void Jacobian::linearise_boundary(std::span<const State<double>> cells) {
+  const auto& mesh = residual_.mesh();
+  const auto differentiate = [&](std::size_t f) -> SideDerivative& {
+    const auto cell = static_cast<std::size_t>(mesh.faces()[f].left);
+    SideDerivative& side = boundary_[f - faces_.size()];
+    side.flux.setZero();
+    for (std::size_t k = 0; k < 4; ++k) {
+      const bool positive = k == density || k == pressure;
+      const double step = gradients_[cell].along(k, residual_.geometry(f).offset);
+      const auto slopes =
+          positive ? positive_step_slopes(cells[cell][k], step) : std::array<double, 2>{1.0, 1.0};
+      side.own[k] = slopes[0];
+      side.along_offset[k] = slopes[1];
+    }
+    return side;
+  };
+  for_each_face(mesh, mesh::is_wall, [&](std::size_t f) {
+    SideDerivative& side = differentiate(f);
+    side.flux(1, pressure) = mesh.faces()[f].normal.x();
+    side.flux(2, pressure) = mesh.faces()[f].normal.y();
+  });
+  for_each_face(mesh, is_prescribed, [&](std::size_t f) {
+    const auto inside = residual_.boundary_state<double>(f, cells, gradients_);
+    differentiate(f).flux =
+        block_of(numerical_flux(residual_.options().flux, seeded(inside),
+                                constant(residual_.problem().prescribed[f - faces_.size()]),
+                                mesh.faces()[f].normal, residual_.problem().gamma));
+  });
+}
+
+void Jacobian::gather_interior(double part, BlockMatrix& out) const {
   const auto& mesh = residual_.mesh();
 #pragma omp parallel for schedule(static)
   for (int row = 0; row < mesh.cell_count(); ++row) {
@@ -148,18 +186,24 @@ void Jacobian::gather_interior() {
       const auto& g = residual_.geometry(f);
       const auto spread = [&](const SideDerivative& side, int own, int other) {
         const Block flux = cf.sign * side.flux;
-        Block& diagonal = matrix_.block(matrix_.place(row, own));
-        diagonal += scaled_columns(flux, side.own);
-        matrix_.block(matrix_.place(row, other)) += scaled_columns(flux, side.other);
+        State<double> direct, across;
+        for (std::size_t k = 0; k < 4; ++k) {
+          direct[k] = part * side.own[k] + 1.0 - part;
+          across[k] = part * side.other[k];
+        }
+        Block own_block = scaled_columns(flux, direct);
+        out.block(out.place(row, other)) += scaled_columns(flux, across);
         for (const auto& neighbour : residual_.stencil().of(own)) {
-          const double wd = neighbour.weight.dot(g.difference), we = neighbour.weight.dot(g.offset);
+          const double wd = part * neighbour.weight.dot(g.difference);
+          const double we = part * neighbour.weight.dot(g.offset);
           State<double> factor;
           for (std::size_t k = 0; k < 4; ++k)
             factor[k] = side.along_difference[k] * wd + side.along_offset[k] * we;
-          const Block part = scaled_columns(flux, factor);
-          matrix_.block(matrix_.place(row, neighbour.cell)) += part;
-          diagonal -= part;
+          const Block block = scaled_columns(flux, factor);
+          out.block(out.place(row, neighbour.cell)) += block;
+          own_block -= block;
         }
+        out.block(out.place(row, own)) += own_block;
       };
       spread(faces_[f].left, face.left, face.right);
       spread(faces_[f].right, face.right, face.left);
@@ -167,75 +211,40 @@ void Jacobian::gather_interior() {
   }
 }
 
-void Jacobian::walls(std::span<const State<double>> cells,
-                     const std::vector<Gradient<double>>& gradients) {
-  for_each_face(residual_.mesh(), mesh::is_wall, [&](std::size_t f) {
-    const auto& face = residual_.mesh().faces()[f];
-    const auto cell = static_cast<std::size_t>(face.left);
-    const Point& offset = residual_.geometry(f).offset;
-    const auto slopes =
-        positive_step_slopes(cells[cell][pressure], gradients[cell].along(pressure, offset));
-    const auto add = [&](int column, double slope) {
-      Block& block = matrix_.block(matrix_.place(face.left, column));
-      block(1, pressure) += slope * face.normal.x();
-      block(2, pressure) += slope * face.normal.y();
-    };
-    add(face.left, slopes[0]);
-    for (const auto& neighbour : residual_.stencil().of(face.left)) {
-      const double slope = part_ * slopes[1] * neighbour.weight.dot(offset);
-      add(neighbour.cell, slope);
-      add(face.left, -slope);
+void Jacobian::gather_boundary(double part, BlockMatrix& out) const {
+  const auto gather = [&](std::size_t f) {
+    const int row = residual_.mesh().faces()[f].left;
+    const SideDerivative& side = boundary_[f - faces_.size()];
+    Block diagonal = scaled_columns(side.flux, side.own);
+    for (const auto& neighbour : residual_.stencil().of(row)) {
+      const Block block = scaled_columns(side.flux, side.along_offset) *
+                          (part * neighbour.weight.dot(residual_.geometry(f).offset));
+      out.block(out.place(row, neighbour.cell)) += block;
+      diagonal -= block;
     }
-  });
+    out.block(out.diagonal(row)) += diagonal;
+  };
+  for_each_face(residual_.mesh(), mesh::is_wall, gather);
+  for_each_face(residual_.mesh(), is_prescribed, gather);
 }
 
-void Jacobian::prescribed(std::span<const State<double>> cells,
-                          const std::vector<Gradient<double>>& gradients) {
-  for_each_face(residual_.mesh(), is_prescribed, [&](std::size_t f) {
-    const auto& face = residual_.mesh().faces()[f];
-    const auto cell = static_cast<std::size_t>(face.left);
-    const Point& offset = residual_.geometry(f).offset;
-    const auto inside = residual_.boundary_state<double>(f, cells, gradients);
-    const auto boundary = f - static_cast<std::size_t>(residual_.mesh().interior_face_count());
-    const Block flux = block_of(numerical_flux(residual_.options().flux, seeded(inside),
-                                               constant(residual_.problem().prescribed[boundary]),
-                                               face.normal, residual_.problem().gamma));
-    State<double> own, step;
-    for (std::size_t k = 0; k < 4; ++k) {
-      const bool positive = k == density || k == pressure;
-      const auto slopes =
-          positive ? positive_step_slopes(cells[cell][k], gradients[cell].along(k, offset))
-                   : std::array<double, 2>{1.0, 1.0};
-      own[k] = slopes[0];
-      step[k] = slopes[1];
-    }
-    Block& diagonal = matrix_.block(matrix_.place(face.left, face.left));
-    diagonal += scaled_columns(flux, own);
-    for (const auto& neighbour : residual_.stencil().of(face.left)) {
-      const Block part = scaled_columns(flux, step) * neighbour.weight.dot(offset);
-      matrix_.block(matrix_.place(face.left, neighbour.cell)) += part;
-      diagonal -= part;
-    }
-  });
-}
-
-void Jacobian::planes(std::span<const State<double>> cells) {
+void Jacobian::linearise_planes(std::span<const State<double>> cells) {
   const auto& mesh = residual_.mesh();
   const auto& problem = residual_.problem();
+  planes_.clear();
   const auto differentiate = [&](const Plane& plane, const auto& states_of) {
     const auto inside = adjoining(mesh, plane, cells);
     std::vector<State<Dual<4>>> in, out(inside.size());
     for (const auto& q : inside) in.push_back(constant(q));
+    const auto first = static_cast<std::size_t>(plane.first_face);
     for (std::size_t j = 0; j < inside.size(); ++j) {
       in[j] = seeded(inside[j]);
       states_of(std::span<const State<Dual<4>>>(in), plane.waves, std::span<State<Dual<4>>>(out));
       in[j] = constant(inside[j]);
-      const auto first = static_cast<std::size_t>(plane.first_face);
-      for (std::size_t i = 0; i < inside.size(); ++i) {
-        const auto& face = mesh.faces()[first + i];
-        matrix_.block(matrix_.place(face.left, mesh.faces()[first + j].left)) +=
-            block_of(physical_flux(out[i], face.normal, problem.gamma));
-      }
+      for (std::size_t i = 0; i < inside.size(); ++i)
+        planes_.push_back(
+            {mesh.faces()[first + i].left, mesh.faces()[first + j].left,
+             block_of(physical_flux(out[i], mesh.faces()[first + i].normal, problem.gamma))});
     }
   };
   for (const Plane& plane : problem.inlet_planes)

@@ -12,11 +12,14 @@ namespace falcate::solver {
 class Jacobian {
  public:
   explicit Jacobian(const Residual& residual);
-  /// `matrix()` becomes dR/dq at `cells`; with a `second_order_part` below 1 the derivative of face
-  /// values is moved that far towards those of the first-order scheme (for preconditioners).
-  void assemble(std::span<const State<double>> cells, double second_order_part = 1.0);
+  /// `matrix()` becomes dR/dq at `cells`.
+  void assemble(std::span<const State<double>> cells);
   BlockMatrix& matrix() { return matrix_; }
   const BlockMatrix& matrix() const { return matrix_; }
+  /// The same at the cells of the last assemble(), but with the derivative of face values moved
+  /// towards that of the first-order scheme; `second_order_part` 1 gives matrix(). For
+  /// preconditioners. `out` has the pattern of matrix().
+  void assemble_blend(double second_order_part, BlockMatrix& out) const;
 
  private:
   /// dF/d(face value) and the derivatives of the face value, side by side.
@@ -27,19 +30,23 @@ class Jacobian {
   struct FaceDerivative {
     SideDerivative left, right;
   };
+  struct PlaneBlock {
+    int row, column;
+    Block block;
+  };
 
-  void interior(std::span<const State<double>> cells);
-  void gather_interior();
-  void walls(std::span<const State<double>> cells, const std::vector<Gradient<double>>& gradients);
-  void prescribed(std::span<const State<double>> cells,
-                  const std::vector<Gradient<double>>& gradients);
-  void planes(std::span<const State<double>> cells);
+  void linearise_interior(std::span<const State<double>> cells);
+  void linearise_boundary(std::span<const State<double>> cells);
+  void linearise_planes(std::span<const State<double>> cells);
+  void gather_interior(double part, BlockMatrix& out) const;
+  void gather_boundary(double part, BlockMatrix& out) const;
 
   const Residual& residual_;
   BlockMatrix matrix_;
   std::vector<FaceDerivative> faces_;
+  std::vector<SideDerivative> boundary_;  ///< walls and prescribed patches
+  std::vector<PlaneBlock> planes_;
   std::vector<Gradient<double>> gradients_;
-  double part_ = 1.0;
 };
 
 }  // namespace falcate::solver

@@ -154,8 +154,7 @@ double entering_total_pressure(const InletCondition& inlet, const Gas& gas) {
   if (!inlet.behind_shock || mach <= 1.0) return inlet.total_pressure;
   // Normal shock: Ames Research Staff, NACA Report 1135 (1953), eq. 99.
   const double m2 = mach * mach;
-  return inlet.total_pressure *
-         std::pow((g + 1.0) * m2 / ((g - 1.0) * m2 + 2.0), g / (g - 1.0)) *
+  return inlet.total_pressure * std::pow((g + 1.0) * m2 / ((g - 1.0) * m2 + 2.0), g / (g - 1.0)) *
          std::pow((g + 1.0) / (2.0 * g * m2 - (g - 1.0)), 1.0 / (g - 1.0));
 }
 

@@ -42,8 +42,8 @@ class March {
         options_(options),
         residual_(problem_, options.scheme),
         jacobian_(residual_),
-        rough_(residual_),
-        preconditioner_(rough_.matrix(), options.level_of_fill),
+        rough_(jacobian_.matrix()),
+        preconditioner_(rough_, options.level_of_fill),
         cells_(cold_start(problem, problem_)),
         cfl_(options.initial_cfl) {
     refresh_planes(problem_, cells_);
@@ -68,10 +68,10 @@ class March {
       evaluate();
     }
     jacobian_.assemble(cells_);
-    rough_.assemble(cells_, options_.preconditioner_order);
+    jacobian_.assemble_blend(options_.preconditioner_order, rough_);
     evaluations_ += 2;
     add_pseudo_time(jacobian_.matrix());
-    add_pseudo_time(rough_.matrix());
+    add_pseudo_time(rough_);
     const Vector change = solve_linear();
     advance(change);
     return {number, drop(), cfl_, linear_.iterations};
@@ -108,7 +108,7 @@ class March {
   }
 
   Vector solve_linear() {
-    preconditioner_.factor(rough_.matrix());
+    preconditioner_.factor(rough_);
     Vector change = Vector::Zero(4 * static_cast<Eigen::Index>(cells_.size()));
     const double tolerance = std::clamp(0.1 * drop(), 1e-4, 1e-2);
     linear_ = gmres([&](const Vector& x, Vector& y) { jacobian_.matrix().multiply(x, y); },
@@ -176,7 +176,8 @@ class March {
   ScaledProblem problem_;
   SteadyOptions options_;
   Residual residual_;
-  Jacobian jacobian_, rough_;
+  Jacobian jacobian_;
+  BlockMatrix rough_;  ///< what the preconditioner factors
   IncompleteLu preconditioner_;
   Cells cells_, sums_;
   std::vector<State<double>> fluxes_;

@@ -2,11 +2,11 @@
 ///
 /// Each step solves (V M / dt + dR/dq) dq = -R, M = dU/dq, dt = CFL V / sum of face wave speeds, by
 /// GMRES preconditioned with block ILU(k) of a matrix half-way to that of the first-order scheme
-/// (factors of the second-order one alone are unstable at low Mach number); CFL grows as the residual falls, so
-/// the last steps are Newton's own.
-/// Sources: Kelley & Keyes, SIAM J. Numer. Anal. 35(2) (1998) 508-523 (pseudo-transient
-/// continuation); Knoll & Keyes, J. Comput. Phys. 193 (2004) 357-397.
-/// Limits: ideal gas, inviscid. Throws std::invalid_argument when the problem is not one.
+/// (factors of the second-order one alone are unstable at low Mach number); CFL grows as the
+/// residual falls, so the last steps are Newton's own. Sources: Kelley & Keyes, SIAM J. Numer.
+/// Anal. 35(2) (1998) 508-523 (pseudo-transient continuation); Knoll & Keyes, J. Comput. Phys. 193
+/// (2004) 357-397. Limits: ideal gas, inviscid. Throws std::invalid_argument when the problem is
+/// not one.
 #pragma once
 #include <functional>
 
