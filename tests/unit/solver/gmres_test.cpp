@@ -1,0 +1,128 @@
+// GMRES against Eigen's dense LU, and its summary against the residual measured outside.
+#include "solver/gmres.h"
+
+#include <gtest/gtest.h>
+
+#include "solver/incomplete_lu.h"
+#include "tests/unit/solver/dense.h"
+
+namespace falcate::solver {
+namespace {
+
+const LinearMap nothing = [](const Vector& x, Vector& y) { y = x; };
+
+struct System {
+  BlockMatrix matrix;
+  Vector b;
+  explicit System(const Pattern& pattern, double extra = 6.0)
+      : matrix(random_matrix(pattern, 5, extra)), b(random_vector(matrix, 6)) {}
+  LinearMap product() const {
+    return [this](const Vector& x, Vector& y) { matrix.multiply(x, y); };
+  }
+  double reduction(const Vector& x) const { return (b - dense(matrix) * x).norm() / b.norm(); }
+  Vector exact() const { return dense(matrix).partialPivLu().solve(b); }
+};
+
+TEST(Gmres, FindsTheAnswerOfTheDenseLu) {
+  const System s(star(6));
+  Vector x = Vector::Zero(s.b.size());
+  const auto summary = gmres(s.product(), nothing, s.b, x, {1e-12, 400, 200});
+  EXPECT_TRUE(summary.converged);
+  EXPECT_LE(summary.reduction, 1e-12);
+  EXPECT_LT((x - s.exact()).norm(), 1e-11 * x.norm());
+}
+
+TEST(Gmres, SaysTheReductionItReached) {
+  const System s(star(6));
+  for (const double tolerance : {1e-1, 1e-3, 1e-6}) {
+    Vector x = Vector::Zero(s.b.size());
+    const auto summary = gmres(s.product(), nothing, s.b, x, {tolerance, 400, 60});
+    EXPECT_TRUE(summary.converged);
+    EXPECT_LE(summary.reduction, tolerance);
+    EXPECT_NEAR(summary.reduction, s.reduction(x), 1e-13);
+    EXPECT_GT(summary.iterations, 0);
+  }
+}
+
+// In exact arithmetic as many steps as unknowns suffice (Saad & Schultz 1986, sec. 3.4).
+TEST(Gmres, EndsWithinAsManyStepsAsUnknowns) {
+  const System s(tridiagonal(3), 2.0);
+  Vector x = Vector::Zero(12);
+  const auto summary = gmres(s.product(), nothing, s.b, x, {1e-11, 100, 100});
+  EXPECT_TRUE(summary.converged);
+  EXPECT_LE(summary.iterations, 12);
+}
+
+TEST(Gmres, TakesOneStepWithTheInverseAsPreconditioner) {
+  const System s(star(4));
+  const Eigen::PartialPivLU<Eigen::MatrixXd> lu(dense(s.matrix));
+  Vector x = Vector::Zero(s.b.size());
+  const auto summary = gmres(s.product(), [&](const Vector& r, Vector& y) { y = lu.solve(r); }, s.b,
+                             x, {1e-11, 50, 50});
+  EXPECT_TRUE(summary.converged);
+  EXPECT_EQ(summary.iterations, 1);
+}
+
+TEST(Gmres, NeedsFewerStepsWithIncompleteFactors) {
+  const System s(star(12), 5.0);
+  IncompleteLu lu(s.matrix, 1);
+  lu.factor(s.matrix);
+  Vector plain = Vector::Zero(s.b.size()), helped = plain;
+  const auto slow = gmres(s.product(), nothing, s.b, plain, {1e-9, 500, 500});
+  const auto fast = gmres(s.product(), [&](const Vector& r, Vector& y) { lu.solve(r, y); }, s.b,
+                          helped, {1e-9, 500, 500});
+  ASSERT_TRUE(slow.converged && fast.converged);
+  EXPECT_LT(2 * fast.iterations, slow.iterations);
+  EXPECT_LT((plain - helped).norm(), 1e-7 * plain.norm());
+}
+
+TEST(Gmres, StopsAtTheLimitAndSaysSo) {
+  const System s(star(6));
+  Vector x = Vector::Zero(s.b.size());
+  const auto summary = gmres(s.product(), nothing, s.b, x, {1e-14, 7, 3});
+  EXPECT_FALSE(summary.converged);
+  EXPECT_EQ(summary.iterations, 7);
+  EXPECT_GT(summary.reduction, 1e-14);
+  EXPECT_LT(summary.reduction, 1.0);
+  EXPECT_NEAR(summary.reduction, s.reduction(x), 1e-13);
+}
+
+TEST(Gmres, GoesOnAfterARestart) {
+  const System s(star(6));
+  Vector x = Vector::Zero(s.b.size());
+  const auto summary = gmres(s.product(), nothing, s.b, x, {1e-10, 2000, 5});
+  EXPECT_TRUE(summary.converged);
+  EXPECT_GT(summary.iterations, 5);
+  EXPECT_LT((x - s.exact()).norm(), 1e-8 * x.norm());
+}
+
+TEST(Gmres, StartsFromTheGuess) {
+  const System s(star(4));
+  Vector x = s.exact();
+  const Vector before = x;
+  const auto summary = gmres(s.product(), nothing, s.b, x, {1e-9, 50, 50});
+  EXPECT_TRUE(summary.converged);
+  EXPECT_EQ(summary.iterations, 0);
+  EXPECT_EQ(x, before);
+}
+
+TEST(Gmres, AnswersZeroForZero) {
+  const System s(tridiagonal(3));
+  Vector x = Vector::Ones(12);
+  const auto summary = gmres(s.product(), nothing, Vector::Zero(12), x, {});
+  EXPECT_TRUE(summary.converged);
+  EXPECT_EQ(summary.iterations, 0);
+  EXPECT_EQ(summary.reduction, 0.0);
+  EXPECT_EQ(x, Vector::Zero(12));
+}
+
+TEST(Gmres, GivesUpOnWhatIsNotFinite) {
+  Vector x = Vector::Zero(4);
+  const auto summary = gmres([](const Vector& v, Vector& y) { y = v * std::nan(""); }, nothing,
+                             Vector::Ones(4), x, {1e-6, 50, 50});
+  EXPECT_FALSE(summary.converged);
+  EXPECT_LE(summary.iterations, 1);
+}
+
+}  // namespace
+}  // namespace falcate::solver
