@@ -121,8 +121,7 @@ class PointSolver {
   }
 
   States second_start(std::size_t level) const {
-    const bool warm =
-        !supersonic_entry() && level < before_.size() && !before_[level].empty();
+    const bool warm = !supersonic_entry() && level < before_.size() && !before_[level].empty();
     return warm ? prolonged(level, solved_.states) : States{};
   }
 
@@ -147,7 +146,9 @@ class PointSolver {
   void solve_level(std::size_t level) {
     const States first = start(level);
     solver::FlowSolution solution = attempt(level, first);
-    if (solution.summary.status == solver::SolutionStatus::failed && !first.empty()) {
+    const bool failed = solution.summary.status == solver::SolutionStatus::failed;
+    // A started flow that does not settle is left for the one behind a shock.
+    if (failed && !first.empty() && (behind_shock_ || !supersonic_entry())) {
       // Once more without the point before it, or, where that was not used, cold.
       solver::FlowSolution again = attempt(level, second_start(level));
       if (again.summary.residual_drop < solution.summary.residual_drop) solution = std::move(again);
