@@ -18,7 +18,7 @@ namespace falcate::solver {
 
 struct SteadyOptions {
   double residual_drop = 1e-11;  ///< stop when |R| <= residual_drop * |R of the cold start|
-  int max_steps = 150;           ///< Newton steps
+  int max_steps = 250;           ///< Newton steps, of both attempts together
   double initial_cfl = 10.0;
   double preconditioner_order = 0.5;  ///< second-order part of the preconditioner's matrix, 0 to 1
   int level_of_fill = 2;              ///< of the preconditioner
