@@ -129,7 +129,7 @@ std::vector<KeyRow> make_key_table() {
      "Distance of the inlet plane from the leading edges, in blade widths.", "1 is right for most work"},
     {"flow", "downstream", &Case::downstream, D::none, "", 0.3, 5, Need::optional, "1.0", Applies::any, "",
      "Distance of the exit plane from the trailing edges, in blade widths.", "1 is right for most work"},
-    {"flow", "max_steps", &Case::max_steps, D::none, "", 5, 100000, Need::optional, "250", Applies::any, "",
+    {"flow", "max_steps", &Case::max_steps, D::none, "", 5, 100000, Need::optional, "150", Applies::any, "",
      "Most solver steps on one mesh.", "more where a point has not converged"},
     {"flow", "residual_drop", &Case::residual_drop, D::none, "", 1e-13, 1e-3, Need::optional, "1e-10", Applies::any, "",
      "Fall of the residual at which a flow counts as steady.", "1e-10 is right for most work"},

@@ -2,6 +2,7 @@
 
 #include <fmt/format.h>
 
+#include <array>
 #include <cmath>
 #include <exception>
 #include <numbers>
@@ -177,11 +178,30 @@ class PointSolver {
     }
     result.figures = figures_.back();
     result.numerical_error = post::error_bars(figures_);
+    if (finest_.summary.status == solver::SolutionStatus::averaged) add_spread();
     const auto surface = post::surface_distribution(problem(meshes_.levels.size() - 1), finest_,
                                                     result.figures.inlet.total_pressure_pa);
     result.suction = surface.suction;
     result.pressure = surface.pressure;
     add_remarks();
+  }
+
+  /// The halves of the averaging time differ: that belongs into the error bars.
+  void add_spread() {
+    const std::size_t finest = meshes_.levels.size() - 1;
+    std::array<post::PassageFigures, 2> halves;
+    for (std::size_t i = 0; i < 2; ++i) {
+      solver::FlowSolution half = finest_;
+      half.boundary = finest_.halves[i];
+      halves[i] = post::passage_figures(problem(finest), half, point_.duty);
+    }
+    for (const post::FigureRow& row : post::figure_rows())
+      post::figure_value(row, solved_.result.numerical_error) +=
+          std::abs(post::figure_value(row, halves[1]) - post::figure_value(row, halves[0]));
+    solved_.result.remarks.push_back(
+        "The flow does not settle: its figures are averages over time, and the error bars count "
+        "how "
+        "far the two halves of that time differ.");
   }
 
   void add_remarks() {

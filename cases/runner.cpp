@@ -140,7 +140,7 @@ class Run {
 }  // namespace
 
 std::vector<std::pair<int, int>> chains(int points) {
-  constexpr int usual_length = 6;
+  constexpr int usual_length = 3;
   const int count = points < 4 ? 1 : std::max(2, (points + usual_length / 2) / usual_length);
   std::vector<std::pair<int, int>> parts;
   for (int k = 0; k < count; ++k) parts.emplace_back(points * k / count, points * (k + 1) / count);

@@ -100,8 +100,8 @@ SafetyRow runaway_row(const SafetyInput& input) {
   SafetyRow row;
   const double runaway = *input.runaway_speed_rpm;
   row.quantity = "Runaway speed";
-  row.value = rpm_text(runaway) +
-              (input.runaway_is_bound ? " at most (no drag)" : " (computed, no drag)");
+  row.value =
+      rpm_text(runaway) + (input.runaway_is_bound ? " at most (no drag)" : " (computed, no drag)");
   row.verdict = Verdict::caution;
   row.caution =
       "A wheel that loses its load runs up to this speed within moments. Test behind containment "

@@ -44,6 +44,9 @@ struct SteadySummary {
 struct FlowSolution {
   std::vector<Primitive> cells;        ///< one a cell of the mesh
   std::vector<BoundaryFlux> boundary;  ///< one a boundary face, face interior_face_count() first
+  /// Averaged flows only: the boundary fluxes of the first and second half of the averaging time;
+  /// their difference tells how far the average can be trusted.
+  std::array<std::vector<BoundaryFlux>, 2> halves;
   SteadySummary summary;
 };
 

@@ -81,14 +81,39 @@ class March {
       refresh_planes(problem_, cells_);
       evaluate();
     }
-    jacobian_.assemble(cells_);
-    jacobian_.assemble_blend(options_.preconditioner_order, rough_);
-    evaluations_ += 2;
-    add_pseudo_time(jacobian_.matrix());
-    add_pseudo_time(rough_);
+    linearise();
+    add_pseudo_time();
     const Vector change = solve_linear();
     advance(change);
     return {number, drop(), cfl_, linear_.iterations};
+  }
+
+  bool finite() const { return std::isfinite(size_); }
+
+  /// One step of true time, linearised implicit Euler: (V M / dt + dR/dq) dq = -R.
+  ConvergencePoint time_step(int number, double dt) {
+    linearise();
+    const auto& areas = residual_.mesh().areas();
+    std::vector<double> rates(areas.size());
+    std::transform(areas.begin(), areas.end(), rates.begin(), [&](double v) { return v / dt; });
+    add_to_diagonal(rates);
+    const Vector change = solve_linear();
+    const double part = change.allFinite() ? allowed_part(change) : 0.0;
+    for (std::size_t i = 0; i < cells_.size(); ++i)
+      for (std::size_t k = 0; k < 4; ++k)
+        cells_[i][k] += part * change(static_cast<Eigen::Index>(4 * i + k));
+    evaluate();
+    return {number, drop(), cfl_, linear_.iterations};
+  }
+
+  /// A fiftieth of the time the reference speed needs from plane to plane.
+  double time_step_length() const {
+    double first = 1e300, last = -1e300;
+    for (const auto& node : residual_.mesh().nodes()) {
+      first = std::min(first, node.x());
+      last = std::max(last, node.x());
+    }
+    return 0.02 * (last - first) / problem_.reference_speed;
   }
 
   FlowSolution solution() const {
@@ -111,13 +136,27 @@ class March {
     ++evaluations_;
   }
 
+  void linearise() {
+    jacobian_.assemble(cells_);
+    jacobian_.assemble_blend(options_.preconditioner_order, rough_);
+    evaluations_ += 2;
+  }
+
   /// V M / dt on the diagonal; V / dt = (sum of face wave speeds) / CFL.
-  void add_pseudo_time(BlockMatrix& matrix) const {
-    const auto speeds = residual_.spectral_sums(cells_);
-    for (int i = 0; i < matrix.rows(); ++i) {
+  void add_pseudo_time() {
+    auto rates = residual_.spectral_sums(cells_);
+    for (double& rate : rates) rate /= cfl_;
+    add_to_diagonal(rates);
+  }
+
+  /// rate M on the diagonals, M = dU/dq.
+  void add_to_diagonal(const std::vector<double>& rates) {
+    for (int i = 0; i < rough_.rows(); ++i) {
       const auto ui = static_cast<std::size_t>(i);
       const auto m = conserved_by_primitive(cells_[ui], problem_.gamma);
-      matrix.block(matrix.diagonal(i)) += speeds[ui] / cfl_ * Eigen::Map<const Block>(m.data());
+      const Block block = rates[ui] * Eigen::Map<const Block>(m.data());
+      jacobian_.matrix().block(jacobian_.matrix().diagonal(i)) += block;
+      rough_.block(rough_.diagonal(i)) += block;
     }
   }
 
@@ -199,6 +238,53 @@ class March {
   long krylov_ = 0, evaluations_ = 0;
 };
 
+/// Running mean of a solution in time.
+class TimeMean {
+ public:
+  void add(const FlowSolution& now, bool second_half) {
+    if (sum_.cells.empty()) {
+      sum_.cells.resize(now.cells.size());
+      sum_.boundary.resize(now.boundary.size());
+      sum_.halves.fill(sum_.boundary);
+    }
+    for (std::size_t i = 0; i < now.cells.size(); ++i) {
+      sum_.cells[i].density += now.cells[i].density;
+      sum_.cells[i].u += now.cells[i].u;
+      sum_.cells[i].v += now.cells[i].v;
+      sum_.cells[i].pressure += now.cells[i].pressure;
+    }
+    std::vector<BoundaryFlux>& half = sum_.halves[second_half ? 1 : 0];
+    for (std::size_t i = 0; i < half.size(); ++i) add_scaled(half[i], now.boundary[i], 1.0);
+    ++count_;
+  }
+
+  /// The two halves have the same number of samples.
+  FlowSolution mean() const {
+    FlowSolution out = sum_;
+    const double share = 1.0 / count_;
+    for (Primitive& q : out.cells)
+      q = {q.density * share, q.u * share, q.v * share, q.pressure * share};
+    for (auto& half : out.halves)
+      for (std::size_t i = 0; i < half.size(); ++i) {
+        const BoundaryFlux sum = half[i];
+        half[i] = {};
+        add_scaled(half[i], sum, 2.0 * share);
+        add_scaled(out.boundary[i], sum, share);
+      }
+    return out;
+  }
+
+ private:
+  static void add_scaled(BoundaryFlux& to, const BoundaryFlux& f, double factor) {
+    to.mass += factor * f.mass;
+    to.momentum_x += factor * f.momentum_x;
+    to.momentum_y += factor * f.momentum_y;
+    to.energy += factor * f.energy;
+  }
+  FlowSolution sum_;
+  int count_ = 0;
+};
+
 }  // namespace
 
 FlowSolution solve_steady(const FlowProblem& problem, const SteadyOptions& options,
@@ -216,14 +302,31 @@ FlowSolution solve_steady(const FlowProblem& problem, const SteadyOptions& optio
   };
   go_on(bold, std::min(bold_steps, options.max_steps));
   if (!march.converged() && step < options.max_steps) go_on(cautious, options.max_steps);
-  FlowSolution solution = march.solution();
+  const bool steady = march.converged(), stuck = march.exhausted();
+  TimeMean mean;
+  const int half = options.averaging_steps / 2;
+  int averaged = 0;
+  if (!steady && half > 0) {
+    march.begin(problem, start, cautious);
+    for (int n = 0; n < 3 * half && march.finite(); ++n) {
+      history.push_back(march.time_step(++step, march.time_step_length()));
+      if (observer) observer(history.back());
+      if (n >= half && march.finite()) mean.add(march.solution(), averaged++ >= half);
+    }
+  }
+  const bool mean_stands = averaged > 0 && averaged == 2 * half;
+  FlowSolution solution = mean_stands ? mean.mean() : march.solution();
   SteadySummary& summary = solution.summary;
+  summary = march.solution().summary;
   summary.history = std::move(history);
   summary.newton_steps = step;
-  summary.status = march.converged() ? SolutionStatus::steady : SolutionStatus::failed;
-  summary.reason = march.converged()   ? "residual at its target"
-                   : march.exhausted() ? "no step lowers the residual any more"
-                                       : "step limit reached before the residual target";
+  summary.status = steady        ? SolutionStatus::steady
+                   : mean_stands ? SolutionStatus::averaged
+                                 : SolutionStatus::failed;
+  summary.reason = steady        ? "residual at its target"
+                   : mean_stands ? "no steady flow found; averaged over time"
+                   : stuck       ? "no step lowers the residual any more"
+                                 : "step limit reached before the residual target";
   summary.seconds = std::chrono::duration<double>(std::chrono::steady_clock::now() - began).count();
   return solution;
 }

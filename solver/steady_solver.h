@@ -3,10 +3,14 @@
 /// Each step solves (V M / dt + dR/dq) dq = -R, M = dU/dq, dt = CFL V / sum of face wave speeds, by
 /// GMRES preconditioned with block ILU(k) of a matrix half-way to that of the first-order scheme
 /// (factors of the second-order one alone are unstable at low Mach number); CFL grows as the
-/// residual falls, so the last steps are Newton's own. Sources: Kelley & Keyes, SIAM J. Numer.
-/// Anal. 35(2) (1998) 508-523 (pseudo-transient continuation); Knoll & Keyes, J. Comput. Phys. 193
-/// (2004) 357-397. Limits: ideal gas, inviscid. Throws std::invalid_argument when the problem is
-/// not one.
+/// residual falls, so the last steps are Newton's own. Where no steady flow is found, the flow is
+/// marched in time by implicit Euler steps of one fiftieth of the passage time (plane to plane at
+/// the reference speed), first to forget its start, then to be averaged; the solution says so.
+///
+/// Sources: Kelley & Keyes, SIAM J. Numer. Anal. 35(2) (1998) 508-523 (pseudo-transient
+/// continuation); Knoll & Keyes, J. Comput. Phys. 193 (2004) 357-397.
+///
+/// Limits: ideal gas, inviscid. Throws std::invalid_argument when the problem is not one.
 #pragma once
 #include <functional>
 
@@ -18,7 +22,8 @@ namespace falcate::solver {
 
 struct SteadyOptions {
   double residual_drop = 1e-11;  ///< stop when |R| <= residual_drop * |R of the cold start|
-  int max_steps = 250;           ///< Newton steps, of both attempts together
+  int max_steps = 150;           ///< Newton steps, of both attempts together
+  int averaging_steps = 160;     ///< time steps averaged where there is no steady flow; 0: none
   double initial_cfl = 10.0;
   double preconditioner_order = 0.5;  ///< second-order part of the preconditioner's matrix, 0 to 1
   int level_of_fill = 2;              ///< of the preconditioner

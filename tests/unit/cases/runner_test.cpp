@@ -26,8 +26,8 @@ TEST(Chains, CoverEveryPointOnceInOrder) {
   }
   EXPECT_EQ(chains(3).size(), 1U);
   EXPECT_EQ(chains(4).size(), 2U);
-  EXPECT_EQ(chains(12).size(), 2U);
-  EXPECT_EQ(chains(24).size(), 4U);
+  EXPECT_EQ(chains(12).size(), 4U);
+  EXPECT_EQ(chains(24).size(), 8U);
 }
 
 TEST(CellStates, AreKeptToTheLastBit) {
