@@ -138,7 +138,7 @@ class Maker {
     MesherProcess mesher(program_, options_.time_limit_s);
     std::optional<CurvedMesh> best;
     double best_miss = 1e300, factor = 1.0;
-    for (int attempt = 0; attempt < 4 && best_miss > 0.12; ++attempt) {
+    for (int attempt = 0; attempt < 8 && best_miss > 0.12; ++attempt) {
       choose_base(wanted * factor);
       auto mesh = coarse_mesh(method, mesher);
       const double ratio = static_cast<double>(mesh.cells.size()) / wanted;

@@ -23,8 +23,10 @@ double coarsening(const SizeRules& rules) {
 /// Places that want cells smaller than the base: curved walls and sharp edges.
 std::vector<Source> sources_of(const std::vector<WallSample>& walls, const SizeRules& rules) {
   std::vector<Source> sources;
-  // A tenth of the base is where growth at the limited gradient costs no more cells than the row.
-  const double floor = 0.05 * rules.base;
+  // A twentieth of the base is where growth at the limited gradient costs few more cells than the
+  // row; a mesh of few cells cannot afford even those, and its edges are coarser.
+  const double spare = std::max(1.0, rules.base / (0.12 * rules.width));
+  const double floor = 0.05 * rules.base * spare * spare * spare;
   const double share = rules.curvature_share * coarsening(rules);
   for (const auto& wall : walls) {
     const double size = wall.radius > 0.0 ? std::max(floor, share * wall.radius) : 0.5 * rules.base;
