@@ -150,6 +150,7 @@ TEST_F(SteadySolver, StopsAtTheFirstStepThatReachesTheTarget) {
 TEST_F(SteadySolver, StopsAtTheStepLimit) {
   SteadyOptions options;
   options.max_steps = 2;
+  options.averaging_steps = 0;
   const auto s = solve(options);
   EXPECT_EQ(s.summary.status, SolutionStatus::failed);
   EXPECT_EQ(s.summary.reason, "step limit reached before the residual target");
@@ -160,11 +161,34 @@ TEST_F(SteadySolver, StopsAtTheStepLimit) {
 TEST_F(SteadySolver, GivesBackItsStartWithoutSteps) {
   SteadyOptions options;
   options.max_steps = 0;
+  options.averaging_steps = 0;
   const auto s = solve(options);
   for (std::size_t i = 0; i < start_.size(); ++i) {
     EXPECT_NEAR(s.cells[i].u, start_[i].u, 1e-12 * std::abs(start_[i].u));
     EXPECT_NEAR(s.cells[i].pressure, start_[i].pressure, 1e-12 * start_[i].pressure);
   }
+}
+
+// A steady flow marched in time comes to itself: the average is the steady answer.
+TEST_F(SteadySolver, AveragesOverTimeWhereNoSteadyFlowWasFound) {
+  const auto steady = solve();
+  SteadyOptions options;
+  options.max_steps = 1;
+  options.averaging_steps = 400;
+  const auto s = solve(options);
+  EXPECT_EQ(s.summary.status, SolutionStatus::averaged);
+  EXPECT_EQ(s.summary.reason, "no steady flow found; averaged over time");
+  EXPECT_EQ(s.summary.newton_steps, 1 + 600);
+  ASSERT_EQ(s.halves[0].size(), s.boundary.size());
+  ASSERT_EQ(s.halves[1].size(), s.boundary.size());
+  for (std::size_t i = 0; i < s.boundary.size(); ++i) {
+    EXPECT_NEAR(0.5 * (s.halves[0][i].mass + s.halves[1][i].mass), s.boundary[i].mass,
+                1e-12 * std::abs(s.boundary[i].mass) + 1e-15);
+    EXPECT_NEAR(s.boundary[i].mass, steady.boundary[i].mass,
+                1e-3 * std::abs(steady.boundary[i].mass) + 1e-12);
+  }
+  for (std::size_t i = 0; i < s.cells.size(); ++i)
+    EXPECT_NEAR(s.cells[i].pressure, steady.cells[i].pressure, 1e-3 * steady.cells[i].pressure);
 }
 
 TEST_F(SteadySolver, GivesUpOnAStartThatIsNoFlow) {
