@@ -74,6 +74,7 @@ struct Case {
   double upstream = 0.0;    ///< widths
   double downstream = 0.0;  ///< widths
   int max_steps = 0;
+  int averaging_steps = 0;
   double residual_drop = 0.0;
 };
 

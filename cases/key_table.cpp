@@ -131,6 +131,8 @@ std::vector<KeyRow> make_key_table() {
      "Distance of the exit plane from the trailing edges, in blade widths.", "1 is right for most work"},
     {"flow", "max_steps", &Case::max_steps, D::none, "", 5, 100000, Need::optional, "150", Applies::any, "",
      "Most solver steps on one mesh.", "more where a point has not converged"},
+    {"flow", "averaging_steps", &Case::averaging_steps, D::none, "", 0, 100000, Need::optional, "160", Applies::any, "",
+     "Time steps averaged where the flow does not settle; 0: such a point fails.", "more where the error bars are wide"},
     {"flow", "residual_drop", &Case::residual_drop, D::none, "", 1e-13, 1e-3, Need::optional, "1e-10", Applies::any, "",
      "Fall of the residual at which a flow counts as steady.", "1e-10 is right for most work"},
   };

@@ -130,6 +130,7 @@ class PointSolver {
     solver::SteadyOptions options;
     options.residual_drop = case_.residual_drop;
     options.max_steps = case_.max_steps;
+    options.averaging_steps = case_.averaging_steps;
     PointProgress progress{point_.id,
                            static_cast<int>(level),
                            static_cast<int>(meshes_.levels.size()),

@@ -90,7 +90,7 @@ TEST(Run, WritesResultsThatMeetTheirDescription) {
 
 TEST(Run, RecordsPointsThatFailAndSaysSoByItsStatus) {
   const ScratchFolder folder;
-  folder.write("hasty.toml", quick_case() + "max_steps = 5\n");
+  folder.write("hasty.toml", quick_case() + "max_steps = 5\naveraging_steps = 0\n");
   const Outcome outcome = falcate(folder, "run hasty.toml --out hasty");
   EXPECT_EQ(outcome.status, 3);
   EXPECT_EQ(outcome.err, "4 of 4 points failed; the reasons are in hasty/log.txt\n");
@@ -110,9 +110,9 @@ TEST(Run, OfABadCaseWritesNothing) {
 
 TEST(Run, LeavesTheFolderOfAnotherCaseAlone) {
   const ScratchFolder folder;
-  folder.write("quick.toml", quick_case() + "max_steps = 5\n");
+  folder.write("quick.toml", quick_case() + "max_steps = 5\naveraging_steps = 0\n");
   ASSERT_EQ(falcate(folder, "run quick.toml --out results").status, 3);
-  folder.write("quick.toml", quick_case() + "max_steps = 6\n");
+  folder.write("quick.toml", quick_case() + "max_steps = 6\naveraging_steps = 0\n");
   const Outcome other = falcate(folder, "run quick.toml --out results");
   EXPECT_EQ(other.status, 2);
   EXPECT_EQ(other.err,

@@ -165,7 +165,7 @@ std::vector<BadCase> bad_cases() {
        wheel,
        {{24, "zzzz = 1"}},
        {":24: [flow] zzzz = 1: no known key; known here are cells, friction, passages, upstream, "
-        "downstream, max_steps, residual_drop"}},
+        "downstream, max_steps, averaging_steps, residual_drop"}},
       {"table_misspelt",
        wheel,
        {{23, "[flwo]"}},
