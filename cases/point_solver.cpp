@@ -109,15 +109,15 @@ class PointSolver {
   }
 
   States start(std::size_t level) const {
-    const States coarse = prolonged(level, solved_.states);
+    States coarse = prolonged(level, solved_.states);
     // Between the starting limit and the limit of steady swallowing there are two flows: a stream
     // faster than sound always starts cold, so that the point before does not choose between them.
     if (supersonic_entry()) return coarse;
-    const States before = level < before_.size() ? before_[level] : States{};
+    States before = level < before_.size() ? before_[level] : States{};
     if (level == 0 || before.empty()) return before.empty() ? coarse : before;
     const States coarse_before = prolonged(level, before_);
     if (coarse.empty() || coarse_before.empty()) return before;
-    const States start = moved(before, coarse, coarse_before);
+    States start = moved(before, coarse, coarse_before);
     return start.empty() ? coarse : start;
   }
 

@@ -7,8 +7,8 @@ namespace falcate::solver {
 
 BlockMatrix::BlockMatrix(const std::vector<std::vector<int>>& pattern) {
   start_.push_back(0);
-  for (std::size_t row = 0; row < pattern.size(); ++row) {
-    columns_.insert(columns_.end(), pattern[row].begin(), pattern[row].end());
+  for (const auto& row : pattern) {
+    columns_.insert(columns_.end(), row.begin(), row.end());
     start_.push_back(columns_.size());
   }
   for (int row = 0; row < rows(); ++row) diagonal_.push_back(place(row, row));
