@@ -53,6 +53,21 @@ T clipped_unit(const T& m) {
   return smaller(larger(m, T(0.0)), T(1.0));
 }
 
+/// Averages of Roe: weighted by the square roots of the densities, share 1/(1+root) to the left.
+template <class T>
+struct RoeAverage {
+  T root, share, u, v, enthalpy, a_squared;
+  RoeAverage(const State<T>& l, const State<T>& r, double gamma) {
+    using std::sqrt;
+    root = sqrt(r[density] / l[density]);
+    share = 1.0 / (1.0 + root);
+    u = (l[1] + root * r[1]) * share;
+    v = (l[2] + root * r[2]) * share;
+    enthalpy = (total_enthalpy(l, gamma) + root * total_enthalpy(r, gamma)) * share;
+    a_squared = (gamma - 1.0) * (enthalpy - 0.5 * (u * u + v * v));
+  }
+};
+
 }  // namespace flux_detail
 
 /// SLAU2: mass flux with a velocity-weighted pressure term that fades at low Mach number.
@@ -92,11 +107,8 @@ State<T> hllc_flux(const State<T>& l, const State<T>& r, const mesh::Point& n, d
   const mesh::Point unit = n / length;
   const T wl = normal_velocity(l, unit), wr = normal_velocity(r, unit);
   const T al = speed_of_sound(l, gamma), ar = speed_of_sound(r, gamma);
-  const T root = sqrt(r[density] / l[density]), share = 1.0 / (1.0 + root);
-  const T w = (wl + root * wr) * share;
-  const T u = (l[1] + root * r[1]) * share, v = (l[2] + root * r[2]) * share;
-  const T h = (total_enthalpy(l, gamma) + root * total_enthalpy(r, gamma)) * share;
-  const T a = sqrt((gamma - 1.0) * (h - 0.5 * (u * u + v * v)));
+  const RoeAverage<T> average(l, r, gamma);
+  const T w = (wl + average.root * wr) * average.share, a = sqrt(average.a_squared);
   const T sl = smaller(wl - al, w - a), sr = larger(wr + ar, w + a);
   const T ml = l[density] * (sl - wl), mr = r[density] * (sr - wr);
   const T sm = (r[pressure] - l[pressure] + ml * wl - mr * wr) / (ml - mr);
@@ -125,13 +137,10 @@ State<T> roe_flux(const State<T>& l, const State<T>& r, const mesh::Point& n, do
   using std::sqrt;
   const double length = n.norm();
   const mesh::Point unit = n / length;
-  const T root = sqrt(r[density] / l[density]), share = 1.0 / (1.0 + root);
-  const T rho = root * l[density];
-  const T u = (l[1] + root * r[1]) * share, v = (l[2] + root * r[2]) * share;
-  const T h = (total_enthalpy(l, gamma) + root * total_enthalpy(r, gamma)) * share;
+  const RoeAverage<T> average(l, r, gamma);
+  const T &u = average.u, &v = average.v, &h = average.enthalpy, &a2 = average.a_squared;
+  const T rho = average.root * l[density], a = sqrt(a2);
   const T w = u * unit.x() + v * unit.y();
-  const T a2 = (gamma - 1.0) * (h - 0.5 * (u * u + v * v));
-  const T a = sqrt(a2);
   const T dp = r[pressure] - l[pressure], drho = r[density] - l[density];
   const T du = r[1] - l[1], dv = r[2] - l[2];
   const T dw = du * unit.x() + dv * unit.y();

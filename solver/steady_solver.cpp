@@ -50,11 +50,8 @@ class March {
         residual_(problem_, options.scheme),
         jacobian_(residual_),
         rough_(jacobian_.matrix()),
-        preconditioner_(rough_, options.level_of_fill),
-        cells_(cold_start(problem, problem_)),
-        cfl_(options.initial_cfl) {
-    refresh_planes(problem_, cells_);
-    evaluate();
+        preconditioner_(rough_, options.level_of_fill) {
+    begin(problem, {}, bold);
     reference_ = size_;
   }
 
@@ -99,10 +96,7 @@ class March {
     add_to_diagonal(rates);
     const Vector change = solve_linear();
     const double part = change.allFinite() ? allowed_part(change) : 0.0;
-    for (std::size_t i = 0; i < cells_.size(); ++i)
-      for (std::size_t k = 0; k < 4; ++k)
-        cells_[i][k] += part * change(static_cast<Eigen::Index>(4 * i + k));
-    evaluate();
+    move(Cells(cells_), part, change);
     return {number, drop(), cfl_, linear_.iterations};
   }
 
@@ -129,6 +123,14 @@ class March {
   }
 
  private:
+  /// A part of the change, and the residual there.
+  void move(const Cells& from, double part, const Vector& change) {
+    for (std::size_t i = 0; i < cells_.size(); ++i)
+      for (std::size_t k = 0; k < 4; ++k)
+        cells_[i][k] = from[i][k] + part * change(static_cast<Eigen::Index>(4 * i + k));
+    evaluate();
+  }
+
   void evaluate() {
     sums_.resize(cells_.size());
     residual_.evaluate<double>(cells_, fluxes_, sums_);
@@ -191,10 +193,7 @@ class March {
     double part = change.allFinite() ? allowed_part(change) : 0.0;
     const bool whole = part > 0.99;
     for (int halving = 0; part > 1e-3 && halving < 6; ++halving, part *= 0.5) {
-      for (std::size_t i = 0; i < cells_.size(); ++i)
-        for (std::size_t k = 0; k < 4; ++k)
-          cells_[i][k] = before[i][k] + part * change(static_cast<Eigen::Index>(4 * i + k));
-      evaluate();
+      move(before, part, change);
       if (std::isfinite(size_) && transient_size(before) <= manner_.growth_allowed * size_before) {
         const double fall = size_before / size_;
         const double growth = whole && halving == 0 ? std::clamp(fall, 1.5, 10.0)
@@ -234,7 +233,7 @@ class March {
   std::vector<State<double>> fluxes_;
   GmresSummary linear_;
   Manner manner_ = bold;
-  double cfl_, size_ = 0.0, reference_ = 1.0;
+  double cfl_ = 1.0, size_ = 0.0, reference_ = 1.0;
   long krylov_ = 0, evaluations_ = 0;
 };
 
