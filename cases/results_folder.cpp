@@ -89,7 +89,7 @@ class ByteReader {
 ResultsFolder ResultsFolder::open(const std::string& path, const Case& input) {
   check_owner(path, input);
   for (const char* name : {"points", "flow", "shapes"}) make_folder(fs::path(path) / name);
-  const ResultsFolder folder(path);
+  ResultsFolder folder(path);
   if (fs::exists(folder.file("points/run.txt"))) return folder;
   const std::string name = fs::path(input.file).filename().string();
   make_folder(folder.file("points/case"));
@@ -103,7 +103,7 @@ ResultsFolder ResultsFolder::open(const std::string& path, const Case& input) {
 }
 
 Case ResultsFolder::kept_case(const std::string& path) {
-  const ResultsFolder folder(path);
+  ResultsFolder folder(path);
   if (!fs::exists(folder.file("points/run.txt")))
     throw FolderError(fmt::format("{}: holds no results", path));
   const std::string outline = folder.file("points/outline.csv");

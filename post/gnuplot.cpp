@@ -77,7 +77,7 @@ std::string run_gnuplot(const std::string& program, const std::string& script) {
   }
   std::rewind(in.get());
   const int status = run_with_files(program, in.get(), out.get(), err.get());
-  const std::string svg = content(out.get());
+  std::string svg = content(out.get());
   if (status != 0 || svg.find("</svg>") == std::string::npos) {
     throw OutputError(fmt::format("'{}' could not draw a figure: {}", program, content(err.get())));
   }
