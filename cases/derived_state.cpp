@@ -7,8 +7,8 @@
 #include <numbers>
 
 #include "cases/wheel_safety.h"
-#include "post/gas_dynamics.h"
 #include "post/gas_properties.h"
+#include "solver/gas_dynamics.h"
 
 namespace falcate::cases {
 namespace {
@@ -74,8 +74,9 @@ DerivedGroup stream_group(const Case& input) {
       {"Angle", fmt::format("{:.2f} deg", degrees(input.stream_angle))},
       {"Exit pressure", bar(input.stream_exit_pressure)},
       {"Isentropic exit Mach number",
-       fmt::format("{:.3f}", post::mach_from_pressure_ratio(ratio, input.gas.heat_capacity_ratio))},
-      {"Isentropic exit velocity", metres_per_second(post::isentropic_velocity(
+       fmt::format("{:.3f}",
+                   solver::mach_from_pressure_ratio(ratio, input.gas.heat_capacity_ratio))},
+      {"Isentropic exit velocity", metres_per_second(solver::isentropic_velocity(
                                        input.gas, input.stream_total_temperature, ratio))}};
   if (input.stream_mach)
     group.rows.emplace_back("Inlet Mach number", fmt::format("{:.3f}", *input.stream_mach));
@@ -145,7 +146,8 @@ void starting_caution(const Case& input, const BladeRow& row,
   for (const OperatingPoint& point : points) {
     if (point.inlet_mach <= 1.0) continue;
     const double area = row.throat / (row.pitch * std::sin(point.inlet.angle));
-    const double limit = post::starting_area_ratio(point.inlet_mach, input.gas.heat_capacity_ratio);
+    const double limit =
+        solver::starting_area_ratio(point.inlet_mach, input.gas.heat_capacity_ratio);
     if (area >= limit) continue;
     state.cautions.push_back(fmt::format(
         "{}: throat over inlet stream width is {:.3f}, below the starting limit of {:.3f} at Mach "

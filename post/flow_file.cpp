@@ -21,6 +21,7 @@
 #include "post/html.h"
 #include "post/node_values.h"
 #include "post/whole_file.h"
+#include "solver/gas_dynamics.h"
 
 namespace falcate::post {
 namespace {
@@ -101,14 +102,13 @@ double mach_number(const solver::Primitive& state, double gamma) {
 
 void add_flow(const FlowField& field, vtkUnstructuredGrid& grid) {
   const double gamma = field.gas.heat_capacity_ratio, r = field.gas.gas_constant;
-  const double cp = gamma * r / (gamma - 1.0);
+  const double cp = solver::heat_capacity(field.gas);
   add_quantity(field, grid, "density_kg_m3", [](const auto& s) { return s.density; });
   add_velocity(field, grid);
   add_quantity(field, grid, "pressure_pa", [](const auto& s) { return s.pressure; });
   add_quantity(field, grid, "mach_number", [&](const auto& s) { return mach_number(s, gamma); });
   add_quantity(field, grid, "total_pressure_pa", [&](const auto& s) {
-    const double mach = mach_number(s, gamma);
-    return s.pressure * std::pow(1.0 + 0.5 * (gamma - 1.0) * mach * mach, gamma / (gamma - 1.0));
+    return s.pressure / solver::pressure_ratio(mach_number(s, gamma), gamma);
   });
   add_quantity(field, grid, "entropy_j_kg_k", [&](const auto& s) {
     const double temperature = s.pressure / (s.density * r);

@@ -2,36 +2,29 @@
 
 #include <fmt/format.h>
 
-#include <algorithm>
 #include <cassert>
 #include <cmath>
 #include <numbers>
 
+#include "solver/mixed_out.h"
+
 namespace falcate::post {
 
 solver::Primitive mixed_out(const solver::Gas& gas, const solver::BoundaryFlux& through,
-                            double pitch, Branch axial) {
+                            double pitch, solver::Branch axial) {
   assert(pitch > 0.0);
   if (!(through.mass > 0.0))
     throw MixedOutError(fmt::format(
         "no flow in the through-flow direction: {:.4g} kg/(s m) pass the plane", through.mass));
-  const double g = gas.heat_capacity_ratio;
-  const double v = through.momentum_y / through.mass;
-  const double still = through.energy / through.mass - 0.5 * v * v;
-  // a u^2 - 2 b u + c = 0; b^2 = a c where the axial velocity is just sonic.
-  const double a = 0.5 * (g + 1.0) / (g - 1.0);
-  const double b = 0.5 * g / (g - 1.0) * through.momentum_x / through.mass;
-  const double discriminant = b * b - a * still;
+  const solver::State<double> flux = {through.mass / pitch, through.momentum_x / pitch,
+                                      through.momentum_y / pitch, through.energy / pitch};
+  const auto equation = solver::mixed_out_equation(flux, gas.heat_capacity_ratio);
+  const solver::State<double> state = solver::mixed_out_state(flux, gas.heat_capacity_ratio, axial);
   constexpr double round_off = 1e-10;
-  if (!(discriminant > -round_off * b * b) || !(b > 0.0) || !(still > 0.0))
+  if (!(equation.discriminant() > -round_off * equation.b * equation.b) || !(equation.b > 0.0) ||
+      !(equation.c > 0.0) || !(state[solver::pressure] > 0.0))
     throw MixedOutError("no uniform stream carries the mass, momentum and energy of this plane");
-  const double root = std::sqrt(std::max(discriminant, 0.0));
-  // The smaller root by its product with the larger one, free of cancellation at low speed.
-  const double u = axial == Branch::supersonic ? (b + root) / a : still / (b + root);
-  const double pressure = (through.momentum_x - through.mass * u) / pitch;
-  if (!(pressure > 0.0))
-    throw MixedOutError("no uniform stream carries the mass, momentum and energy of this plane");
-  return {through.mass / (pitch * u), u, v, pressure};
+  return {state[0], state[1], state[2], state[3]};
 }
 
 StreamState stream_state(const solver::Gas& gas, const solver::Primitive& stream) {
@@ -40,10 +33,10 @@ StreamState stream_state(const solver::Gas& gas, const solver::Primitive& stream
   StreamState state;
   state.angle_deg = std::atan2(stream.u, stream.v) * 180.0 / std::numbers::pi;
   state.velocity_m_s = std::hypot(stream.u, stream.v);
-  state.mach = state.velocity_m_s / speed_of_sound(gas, temperature);
+  state.mach = state.velocity_m_s / solver::speed_of_sound(gas, temperature);
   state.pressure_pa = stream.pressure;
-  state.total_pressure_pa = stream.pressure / pressure_ratio(state.mach, g);
-  state.total_temperature_k = temperature / temperature_ratio(state.mach, g);
+  state.total_pressure_pa = stream.pressure / solver::pressure_ratio(state.mach, g);
+  state.total_temperature_k = temperature / solver::temperature_ratio(state.mach, g);
   return state;
 }
 

@@ -5,8 +5,14 @@
 #include <cmath>
 #include <numbers>
 
+#include "solver/gas_dynamics.h"
+
 namespace falcate::post {
 namespace {
+
+using solver::Branch, solver::choked_flow_constant, solver::critical_pressure_ratio;
+using solver::mach_from_area_ratio, solver::mach_from_pressure_ratio, solver::normal_shock;
+using solver::pressure_ratio, solver::temperature_ratio;
 
 constexpr double design_tolerance = 0.01;
 

@@ -8,7 +8,6 @@
 /// gets does not promise the full spouting velocity. SI units. Source: NACA Report 1135 (1953);
 /// coefficients are common practice.
 #pragma once
-#include "post/gas_dynamics.h"
 #include "post/velocity_triangle.h"
 #include "solver/flow_problem.h"
 

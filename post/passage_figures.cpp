@@ -47,15 +47,15 @@ BoundaryFlux reversed(const BoundaryFlux& flux) {
 }
 
 /// Whether the flow passes a plane faster than sound in the axial direction, by its cells.
-Branch axial_branch(const solver::FlowProblem& problem, const solver::FlowSolution& solution,
-                    PatchKind kind) {
+solver::Branch axial_branch(const solver::FlowProblem& problem,
+                            const solver::FlowSolution& solution, PatchKind kind) {
   double excess = 0.0;
   for_each_face(problem, solution, kind, [&](const auto& face, const BoundaryFlux&) {
     const solver::Primitive& cell = solution.cells[at(face.left)];
     const double sound = std::sqrt(problem.gas.heat_capacity_ratio * cell.pressure / cell.density);
     excess += (cell.u - sound) * face.normal.norm();
   });
-  return excess > 0.0 ? Branch::supersonic : Branch::subsonic;
+  return excess > 0.0 ? solver::Branch::supersonic : solver::Branch::subsonic;
 }
 
 void set_forces(PassageFigures& figures, const solver::FlowProblem& problem,
@@ -160,8 +160,8 @@ std::vector<SurfacePoint> follow(std::vector<WallPiece> pieces, double pitch, do
     const mesh::Point middle = piece.middle + shift, end = piece.ends[1 - first] + shift;
     arc += nearest + (middle - start).norm();
     const double ratio = std::clamp(piece.pressure / total_pressure, 1e-12, 1.0);
-    points.push_back(
-        {middle.x(), middle.y(), arc, piece.pressure, mach_from_pressure_ratio(ratio, gamma)});
+    points.push_back({middle.x(), middle.y(), arc, piece.pressure,
+                      solver::mach_from_pressure_ratio(ratio, gamma)});
     arc += (end - middle).norm();
     here = end;
   }

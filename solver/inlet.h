@@ -17,6 +17,7 @@
 #include <span>
 #include <vector>
 
+#include "solver/gas_dynamics.h"
 #include "solver/plane_waves.h"
 #include "solver/prandtl_meyer.h"
 #include "solver/state.h"
@@ -55,9 +56,7 @@ template <class T>
 State<T> simple_wave_state(const State<T>& cell, const InletStream& s) {
   using std::atan2;
   using std::cos;
-  using std::pow;
   using std::sin;
-  using std::sqrt;
   const double g = s.gamma, side = s.cotangent < 0.0 ? -1.0 : 1.0;
   const T a = speed_of_sound(cell, g);
   const T m2 = (cell[1] * cell[1] + cell[2] * cell[2]) / (a * a);
@@ -65,11 +64,8 @@ State<T> simple_wave_state(const State<T>& cell, const InletStream& s) {
   const T outgoing = theta - prandtl_meyer(m2, g);
   const T nu = larger(T(0.5 * (s.simple_wave - outgoing)), T(1e-6));
   const T turned = 0.5 * (s.simple_wave + outgoing);
-  const T mach2 = mach_squared_from_prandtl_meyer(nu, g);
-  const T temperature = 1.0 / (1.0 + 0.5 * (g - 1.0) * mach2);
-  const T rho = pow(temperature, 1.0 / (g - 1.0));
-  const T w = sqrt(mach2 * g * temperature);
-  return {rho, w * cos(turned), side * w * sin(turned), rho * temperature};
+  const auto in = unit_stream(mach_squared_from_prandtl_meyer(nu, g), g);
+  return {in.density, in.speed * cos(turned), side * in.speed * sin(turned), in.pressure};
 }
 
 /// Momentum error of the set angle: sum of weight * rho u (v - u cot) over the plane.

@@ -13,7 +13,7 @@
 #include <span>
 #include <vector>
 
-#include "solver/mixed_out_pressure.h"
+#include "solver/mixed_out.h"
 #include "solver/plane_waves.h"
 #include "solver/reconstruction.h"
 #include "solver/state.h"
@@ -64,7 +64,7 @@ T pressure_error(std::span<const State<T>> cells, std::span<const T> half, const
     const State<T> f = physical_flux(q, mesh::Point(1.0, 0.0), s.gamma);
     for (std::size_t k = 0; k < 4; ++k) sum[k] += waves.weight(i) * f[k];
   }
-  return mixed_out_pressure(sum, s.gamma) - s.pressure;
+  return mixed_out_state(sum, s.gamma, Branch::subsonic)[pressure] - s.pressure;
 }
 
 /// P by Newton's method on values, with a last step on T, which carries exact derivatives.

@@ -4,6 +4,8 @@
 #include <numeric>
 #include <stdexcept>
 
+#include "solver/gas_dynamics.h"
+
 namespace falcate::solver {
 namespace {
 
@@ -16,15 +18,14 @@ Units units_of(const FlowProblem& problem) {
 }
 
 double isentropic_mach(double pressure_ratio, double gamma) {
-  const double ratio = std::min(pressure_ratio, 1.0 - 1e-8);
-  return std::sqrt(2.0 / (gamma - 1.0) * (std::pow(ratio, (1.0 - gamma) / gamma) - 1.0));
+  return mach_from_pressure_ratio(std::min(pressure_ratio, 1.0 - 1e-8), gamma);
 }
 
 /// State of Mach number and direction with total density and pressure 1.
 State<double> isentropic_state(double mach, double angle, double gamma) {
-  const double t = 1.0 / (1.0 + 0.5 * (gamma - 1.0) * mach * mach);
-  const double rho = std::pow(t, 1.0 / (gamma - 1.0)), w = mach * std::sqrt(gamma * t);
-  return {rho, w * std::sin(angle), w * std::cos(angle), rho * t};
+  const auto stream = unit_stream(mach * mach, gamma);
+  return {stream.density, stream.speed * std::sin(angle), stream.speed * std::cos(angle),
+          stream.pressure};
 }
 
 std::vector<Plane> planes_of(const mesh::PassageMesh& mesh, PatchKind kind) {
@@ -150,12 +151,9 @@ double starting_mach(const FlowProblem& problem) {
 }  // namespace
 
 double entering_total_pressure(const InletCondition& inlet, const Gas& gas) {
-  const double mach = inlet.mach.value_or(0.0), g = gas.heat_capacity_ratio;
+  const double mach = inlet.mach.value_or(0.0);
   if (!inlet.behind_shock || mach <= 1.0) return inlet.total_pressure;
-  // Normal shock: Ames Research Staff, NACA Report 1135 (1953), eq. 99.
-  const double m2 = mach * mach;
-  return inlet.total_pressure * std::pow((g + 1.0) * m2 / ((g - 1.0) * m2 + 2.0), g / (g - 1.0)) *
-         std::pow((g + 1.0) / (2.0 * g * m2 - (g - 1.0)), 1.0 / (g - 1.0));
+  return inlet.total_pressure * normal_shock(mach, gas.heat_capacity_ratio).total_pressure_ratio;
 }
 
 ScaledProblem scale(const FlowProblem& problem) {

@@ -9,6 +9,7 @@
 #include "mesh/structured.h"
 #include "post/passage_figures.h"
 #include "post/speed_line.h"
+#include "solver/gas_dynamics.h"
 
 namespace falcate::post {
 namespace {

@@ -15,6 +15,7 @@
 #include "mesh/blade_shapes.h"
 #include "mesh/mesh_levels_maker.h"
 #include "post/passage_figures.h"
+#include "solver/gas_dynamics.h"
 #include "solver/steady_solver.h"
 
 namespace falcate {
@@ -125,7 +126,7 @@ post::WheelDuty duty(double ratio) {
   d.jet_angle_deg = jet_angle_deg;
   d.jet.jet_pressure = 1e5;
   d.jet.jet_temperature = 300.0;
-  d.jet.jet_velocity = jet_mach * post::speed_of_sound(gas, d.jet.jet_temperature);
+  d.jet.jet_velocity = jet_mach * solver::speed_of_sound(gas, d.jet.jet_temperature);
   d.jet.spouting_velocity = d.jet.jet_velocity;
   d.jet.jet_density = d.jet.jet_pressure / (gas.gas_constant * d.jet.jet_temperature);
   d.jet.mass_flow = 0.01;

@@ -10,6 +10,8 @@ namespace falcate::post {
 namespace {
 
 constexpr double degree = std::numbers::pi / 180.0;
+using solver::Branch;
+
 const solver::Gas air;
 
 /// Fluxes in +x of a uniform stream over a width.

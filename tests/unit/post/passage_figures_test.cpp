@@ -9,6 +9,7 @@
 
 #include "mesh/structured.h"
 #include "post/mixed_out.h"
+#include "solver/gas_dynamics.h"
 
 namespace falcate::post {
 namespace {
@@ -275,7 +276,7 @@ TEST(SurfaceDistribution, FollowsEachSideFromTheLeadingEdge) {
       EXPECT_GT(p.arc_length, i > 0 ? (*side)[i - 1].arc_length : 0.0);
       EXPECT_NEAR(p.pressure_pa, base * (1.0 + p.x / chord), 1e-6);
       const double ratio = std::min(p.pressure_pa / 1.28e5, 1.0);
-      EXPECT_NEAR(p.isentropic_mach, mach_from_pressure_ratio(ratio, 1.4), 1e-12);
+      EXPECT_NEAR(p.isentropic_mach, solver::mach_from_pressure_ratio(ratio, 1.4), 1e-12);
     }
     EXPECT_NEAR(side->front().x, 0.5 * chord / 32, 2e-5);
     EXPECT_NEAR(side->back().arc_length, length * (1.0 - 0.5 / 32), 0.01 * length);

@@ -1,4 +1,4 @@
-#include "post/gas_dynamics.h"
+#include "solver/gas_dynamics.h"
 
 #include <gtest/gtest.h>
 
@@ -10,14 +10,17 @@
 #include <utility>
 #include <vector>
 
-namespace falcate::post {
+#include "solver/dual.h"
+#include "solver/prandtl_meyer.h"
+
+namespace falcate::solver {
 namespace {
 
 constexpr double degree = std::numbers::pi / 180.0;
 
 /// Rows of numbers of a table in the data folder; comments and the heading are left out.
 std::vector<std::vector<double>> table(const std::string& name) {
-  std::ifstream file(std::string(FALCATE_SOURCE_DIR) + "/tests/unit/post/data/" + name);
+  std::ifstream file(std::string(FALCATE_SOURCE_DIR) + "/tests/unit/solver/data/" + name);
   EXPECT_TRUE(file) << name;
   std::vector<std::vector<double>> rows;
   bool heading = true;
@@ -35,7 +38,7 @@ std::vector<std::vector<double>> table(const std::string& name) {
 #define EXPECT_RELATIVE(value, expected, tolerance) \
   EXPECT_NEAR(value, expected, (tolerance)*std::abs(expected)) << "Mach " << mach
 
-// tests/unit/post/data/gasdynamics_checks.csv (source in its first line), eight digits.
+// tests/unit/solver/data/gasdynamics_checks.csv (source in its first line), eight digits.
 TEST(GasDynamics, TableOfCheckValues) {
   const auto rows = table("gasdynamics_checks.csv");
   ASSERT_EQ(rows.size(), 12u);
@@ -47,8 +50,7 @@ TEST(GasDynamics, TableOfCheckValues) {
     EXPECT_RELATIVE(temperature_ratio(mach, g), r[3], digits);
     EXPECT_RELATIVE(area_ratio(mach, g), r[4], digits);
     if (mach < 1.0) continue;
-    EXPECT_NEAR(prandtl_meyer_angle(mach, g) / degree, r[5], 1e-6);
-    EXPECT_NEAR(mach_angle(mach) / degree, r[6], 1e-6);
+    EXPECT_NEAR(prandtl_meyer(mach * mach, g) / degree, r[5], 1e-6);
     const NormalShock shock = normal_shock(mach, g);
     EXPECT_RELATIVE(shock.mach, r[7], digits);
     EXPECT_RELATIVE(shock.pressure_ratio, r[8], digits);
@@ -64,9 +66,6 @@ TEST(GasDynamics, InversesReturnTheMachNumber) {
       EXPECT_RELATIVE(mach_from_pressure_ratio(pressure_ratio(mach, g), g), mach, 1e-12);
       const Branch branch = mach < 1.0 ? Branch::subsonic : Branch::supersonic;
       EXPECT_RELATIVE(mach_from_area_ratio(area_ratio(mach, g), g, branch), mach, 1e-7);
-      if (mach >= 1.0) {
-        EXPECT_RELATIVE(mach_from_prandtl_meyer_angle(prandtl_meyer_angle(mach, g), g), mach, 1e-9);
-      }
     }
   }
 }
@@ -90,7 +89,7 @@ TEST(GasDynamics, ChokedFlow) {
 }
 
 TEST(GasDynamics, MassFluxPeaksAtTheSonicThroat) {
-  const solver::Gas air;
+  const Gas air;
   const double p0 = 8e5, t0 = 293.15, sonic = p0 * critical_pressure_ratio(1.4);
   const double choked = choked_flow_constant(1.4) * p0 / std::sqrt(air.gas_constant * t0);
   EXPECT_NEAR(mass_flux(air, p0, t0, sonic) / choked, 1.0, 1e-12);
@@ -105,14 +104,14 @@ TEST(GasDynamics, MassFluxPeaksAtTheSonicThroat) {
 
 // Energy: V = sqrt(2 cp T0 (1 - (p/p0)^((g-1)/g))). 5 bar absolute to atmosphere: Mach 1.7.
 TEST(GasDynamics, SpoutingVelocity) {
-  const solver::Gas air;
+  const Gas air;
   const double ratio = 1.01325 / 5.0;
   const double expected = std::sqrt(2.0 * 1004.675 * 293.15 * (1.0 - std::pow(ratio, 0.4 / 1.4)));
   EXPECT_NEAR(isentropic_velocity(air, 293.15, ratio), expected, 1e-9 * expected);
   EXPECT_NEAR(mach_from_pressure_ratio(ratio, 1.4), 1.7, 0.002);
 }
 
-// tests/unit/post/data/kantrowitz_limits.csv (source in its first line), six decimals.
+// tests/unit/solver/data/kantrowitz_limits.csv (source in its first line), six decimals.
 TEST(GasDynamics, StartingLimit) {
   const auto rows = table("kantrowitz_limits.csv");
   ASSERT_GT(rows.size(), 8u);
@@ -126,4 +125,4 @@ TEST(GasDynamics, StartingLimit) {
 }
 
 }  // namespace
-}  // namespace falcate::post
+}  // namespace falcate::solver

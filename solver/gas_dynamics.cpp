@@ -1,10 +1,9 @@
-#include "post/gas_dynamics.h"
+#include "solver/gas_dynamics.h"
 
 #include <cassert>
 #include <cmath>
-#include <numbers>
 
-namespace falcate::post {
+namespace falcate::solver {
 namespace {
 
 /// Root of a function that changes sign between the ends, to the last bit.
@@ -21,18 +20,18 @@ double bisect(const Function& f, double low, double high) {
 
 }  // namespace
 
-double heat_capacity(const solver::Gas& gas) {
+double heat_capacity(const Gas& gas) {
   const double g = gas.heat_capacity_ratio;
   return g / (g - 1.0) * gas.gas_constant;
 }
 
-double speed_of_sound(const solver::Gas& gas, double temperature) {
+double speed_of_sound(const Gas& gas, double temperature) {
   assert(temperature > 0.0);
   return std::sqrt(gas.heat_capacity_ratio * gas.gas_constant * temperature);
 }
 
 double temperature_ratio(double mach, double gamma) {
-  return 1.0 / (1.0 + 0.5 * (gamma - 1.0) * mach * mach);
+  return temperature_ratio_from_square(mach * mach, gamma);
 }
 
 double pressure_ratio(double mach, double gamma) {
@@ -69,27 +68,6 @@ double mach_from_area_ratio(double area, double gamma, Branch branch) {
   return 1.0 / bisect([&](double s) { return area_ratio(1.0 / s, gamma) - area; }, least, 1.0);
 }
 
-double prandtl_meyer_angle(double mach, double gamma) {
-  assert(mach >= 1.0);
-  const double k = std::sqrt((gamma + 1.0) / (gamma - 1.0));
-  const double b = std::sqrt(mach * mach - 1.0);
-  return k * std::atan(b / k) - std::atan(b);
-}
-
-double mach_from_prandtl_meyer_angle(double angle, double gamma) {
-  assert(angle >= 0.0);
-  assert(angle < 0.5 * std::numbers::pi * (std::sqrt((gamma + 1.0) / (gamma - 1.0)) - 1.0));
-  if (angle == 0.0) return 1.0;
-  const double least = 1e-9;
-  return 1.0 /
-         bisect([&](double s) { return prandtl_meyer_angle(1.0 / s, gamma) - angle; }, least, 1.0);
-}
-
-double mach_angle(double mach) {
-  assert(mach >= 1.0);
-  return std::asin(1.0 / mach);
-}
-
 NormalShock normal_shock(double mach, double gamma) {
   assert(mach >= 1.0);
   const double m2 = mach * mach;
@@ -107,8 +85,7 @@ double choked_flow_constant(double gamma) {
   return std::sqrt(gamma) * std::pow(2.0 / (gamma + 1.0), 0.5 * (gamma + 1.0) / (gamma - 1.0));
 }
 
-double mass_flux(const solver::Gas& gas, double total_pressure, double total_temperature,
-                 double pressure) {
+double mass_flux(const Gas& gas, double total_pressure, double total_temperature, double pressure) {
   assert(total_pressure > 0.0 && total_temperature > 0.0);
   const double g = gas.heat_capacity_ratio;
   const double mach = mach_from_pressure_ratio(pressure / total_pressure, g);
@@ -116,8 +93,7 @@ double mass_flux(const solver::Gas& gas, double total_pressure, double total_tem
   return pressure / (gas.gas_constant * temperature) * mach * speed_of_sound(gas, temperature);
 }
 
-double isentropic_velocity(const solver::Gas& gas, double total_temperature,
-                           double pressure_ratio) {
+double isentropic_velocity(const Gas& gas, double total_temperature, double pressure_ratio) {
   const double g = gas.heat_capacity_ratio;
   const double mach = mach_from_pressure_ratio(pressure_ratio, g);
   return mach * speed_of_sound(gas, total_temperature * temperature_ratio(mach, g));
@@ -127,4 +103,4 @@ double starting_area_ratio(double mach, double gamma) {
   return 1.0 / (area_ratio(mach, gamma) * normal_shock(mach, gamma).total_pressure_ratio);
 }
 
-}  // namespace falcate::post
+}  // namespace falcate::solver
