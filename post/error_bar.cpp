@@ -1,9 +1,12 @@
 #include "post/error_bar.h"
 
+#include <fmt/format.h>
+
 #include <algorithm>
 #include <cassert>
 #include <cmath>
 #include <limits>
+#include <map>
 
 namespace falcate::post {
 namespace {
@@ -67,17 +70,17 @@ GridConvergence grid_convergence(double fine, double medium, double coarse, doub
 const char* error_bar_words(ErrorBarKind kind) {
   switch (kind) {
     case ErrorBarKind::observed_order:
-      return "three meshes, observed order";
+      return "observed order";
     case ErrorBarKind::out_of_range:
-      return "three meshes, observed order out of range: safety factor 3";
+      return "observed order out of range";
     case ErrorBarKind::oscillatory:
-      return "three meshes, values oscillate: safety factor 3";
+      return "swinging from mesh to mesh";
     case ErrorBarKind::two_meshes:
-      return "two meshes, formal order: safety factor 3";
+      return "two meshes only";
     case ErrorBarKind::round_off:
-      return "meshes differ by round-off alone";
+      return "differing by round-off alone";
     case ErrorBarKind::unknown:
-      return "one mesh: not known";
+      return "one mesh only";
   }
   return "";
 }
@@ -99,13 +102,20 @@ ErrorBar error_bar(const std::vector<double>& values) {
   return three_meshes(coarse, medium, fine);
 }
 
-PassageFigures error_bars(const std::vector<PassageFigures>& levels) {
-  PassageFigures bars;
+NumericalError error_bars(const std::vector<PassageFigures>& levels) {
+  NumericalError bars;
+  std::map<ErrorBarKind, int> counts;
   for (const FigureRow& row : figure_rows()) {
     std::vector<double> values;
     for (const PassageFigures& level : levels) values.push_back(figure_value(row, level));
-    figure_value(row, bars) = error_bar(values).half_width;
+    const ErrorBar bar = error_bar(values);
+    figure_value(row, bars) = bar.half_width;
+    if (std::any_of(values.begin(), values.end(), [](double v) { return v != 0.0; }))
+      ++counts[bar.kind];
   }
+  for (const auto& [kind, count] : counts)
+    bars.basis +=
+        fmt::format("{}{} {}", bars.basis.empty() ? "" : ", ", count, error_bar_words(kind));
   return bars;
 }
 

@@ -32,7 +32,7 @@ enum class ErrorBarKind {
   round_off,       ///< the meshes differ by round-off alone
   unknown          ///< one value: the half-width is not a number
 };
-const char* error_bar_words(ErrorBarKind kind);
+const char* error_bar_words(ErrorBarKind kind);  ///< a few plain words
 
 struct ErrorBar {
   double half_width = 0.0;  ///< same unit as the figure
@@ -44,6 +44,7 @@ struct ErrorBar {
 ErrorBar error_bar(const std::vector<double>& values);
 
 /// Half-widths figure by figure (see figure_rows()), coarse first; figures outside the table are 0.
-PassageFigures error_bars(const std::vector<PassageFigures>& levels);
+/// The basis counts the kinds over the figures, those that are nought on every mesh left out.
+NumericalError error_bars(const std::vector<PassageFigures>& levels);
 
 }  // namespace falcate::post

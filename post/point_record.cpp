@@ -17,7 +17,7 @@ namespace {
 using Json = nlohmann::ordered_json;
 
 constexpr const char* kind = "falcate point";
-constexpr int version = 1;
+constexpr int version = 2;
 
 // One walk over the fields of each structure serves both ways: `a` reads or writes.
 
@@ -51,6 +51,12 @@ void fields(Archive& a, PassageFigures& f) {
   a("axial_force_n", f.axial_force_n);
   a("torque_n_m", f.torque_n_m);
   a("power_w", f.power_w);
+}
+
+template <class Archive>
+void fields(Archive& a, NumericalError& e) {
+  fields(a, static_cast<PassageFigures&>(e));
+  a("basis", e.basis);
 }
 
 template <class Archive>

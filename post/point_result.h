@@ -55,12 +55,17 @@ struct SurfacePoint {
   double pressure_pa = 0.0, isentropic_mach = 0.0;
 };
 
+/// Half-widths of the error bars, figure by figure.
+struct NumericalError : PassageFigures {
+  std::string basis;  ///< how many figures have their bar in which way; see error_bar.h
+};
+
 struct PointResult {
   std::string id, shape;
   bool wheel = false;
   double speed_rpm = 0.0, blade_speed_m_s = 0.0, speed_ratio = 0.0;
-  PassageFigures figures;          ///< finest mesh
-  PassageFigures numerical_error;  ///< half-width of the error bar, figure by figure
+  PassageFigures figures;  ///< finest mesh
+  NumericalError numerical_error;
   std::vector<SurfacePoint> suction, pressure;
   solver::SteadySummary solution;  ///< finest mesh
   int cells = 0;

@@ -19,7 +19,7 @@ std::string percent(double value, double error) {
 std::string rpm(double speed, int digits = 3) { return number_text(speed, digits) + " rpm"; }
 
 std::string wheel_point_sentence(const PointResult& point) {
-  const auto &figures = point.figures, &errors = point.numerical_error;
+  const PassageFigures &figures = point.figures, &errors = point.numerical_error;
   return fmt::format(
       "At {} (speed ratio {:.3f}) the blades turn {} of the kinetic energy of the gas that passes "
       "through them into work.",
@@ -48,7 +48,7 @@ std::string speed_line_sentence(const SpeedLine& line, const PointResult& best) 
 }
 
 std::string rig_sentence(const PointResult& point) {
-  const auto &figures = point.figures, &errors = point.numerical_error;
+  const PassageFigures &figures = point.figures, &errors = point.numerical_error;
   return fmt::format(
       "The blade row turns the flow by {}°, from {}° to {}° from the plane of rotation. The gas "
       "leaves at Mach {} with a total pressure loss of {} of the exit dynamic pressure "
@@ -159,7 +159,7 @@ std::vector<KeyNumber> key_numbers(const ReportInput& input) {
   const auto key = key_point(input);
   if (!key) return {};
   const PointResult& point = input.points[*key];
-  const auto &figures = point.figures, &errors = point.numerical_error;
+  const PassageFigures &figures = point.figures, &errors = point.numerical_error;
   if (!point.wheel) {
     return {{"Turning", number_with_error(figures.turning_deg, errors.turning_deg) + "°",
              remarks_of(point)},

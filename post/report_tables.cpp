@@ -133,16 +133,17 @@ std::string solution_table(const ReportInput& input) {
       "<div class=\"scroll\"><table class=\"figures\"><thead><tr><th scope=\"col\">Point</th><th "
       "scope=\"col\">Cells</th><th scope=\"col\">State</th><th scope=\"col\">Residual</th><th "
       "scope=\"col\">Steps</th><th scope=\"col\">Residual evaluations</th><th scope=\"col\">Mass "
-      "in - out</th></tr></thead><tbody>\n";
+      "in - out</th><th scope=\"col\">Error bars: figures by</th></tr></thead><tbody>\n";
   for (const auto& point : input.points) {
     out += fmt::format(
         "<tr><th scope=\"row\">{}</th><td>{}</td><td>{}</td><td>{:.1e}</td><td>{}</td><td>{}</td>"
-        "<td>{}</td></tr>\n",
+        "<td>{}</td><td>{}</td></tr>\n",
         escape_html(point_name(point)), point.cells,
         stands(point) ? status_words(point.solution.status) : "failed",
         point.solution.residual_drop, point.solution.newton_steps,
         point.solution.residual_evaluations,
-        stands(point) ? fmt::format("{:.1e}", point.figures.mass_imbalance) : "");
+        stands(point) ? fmt::format("{:.1e}", point.figures.mass_imbalance) : "",
+        escape_html(point.numerical_error.basis));
   }
   return out + "</tbody></table></div>\n";
 }

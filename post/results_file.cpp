@@ -72,6 +72,7 @@ Json point_json(const PointResult& point) {
     json["balance"][column.key] = stands ? number(point.figures.*column.value) : Json(nullptr);
   json["losses"] = Json::object();
   json["numerical_error"] = error;
+  json["numerical_error_basis"] = point.numerical_error.basis;
   json["solution"] = solution_json(point);
   json["failure"] = point.failure;
   json["remarks"] = point.remarks;
@@ -94,6 +95,7 @@ PointResult point_from(const Json& json) {
   }
   for (const BalanceColumn& column : balance_columns)
     point.figures.*column.value = number(json.at("balance").at(column.key));
+  point.numerical_error.basis = json.value("numerical_error_basis", std::string());
   const Json& solution = json.at("solution");
   point.solution.status = status_from_words(solution.at("status").get<std::string>());
   point.solution.reason = solution.at("reason").get<std::string>();

@@ -130,12 +130,32 @@ TEST(ErrorBars, FigureByFigure) {
     const std::vector<double> values = series(5.0, c, 1.5);
     for (std::size_t k = 0; k < 3; ++k) figure_value(row, levels[k]) = values[k];
   }
-  const PassageFigures bars = error_bars(levels);
+  const NumericalError bars = error_bars(levels);
   c = 0.0;
   for (const FigureRow& row : figure_rows()) {
     c += 0.01;
     EXPECT_NEAR(figure_value(row, bars), 1.25 * c, 1e-11) << row.group << ' ' << row.key;
   }
+  EXPECT_EQ(bars.basis, std::to_string(figure_rows().size()) + " observed order");
+}
+
+// One kind a figure, by the changes from mesh to mesh; figures that are nought everywhere do not
+// count.
+TEST(ErrorBars, BasisCountsTheKinds) {
+  std::vector<PassageFigures> levels(3);
+  const auto set = [&](double PassageFigures::*figure, std::vector<double> values) {
+    for (std::size_t k = 0; k < 3; ++k) levels[k].*figure = values[k];
+  };
+  set(&PassageFigures::turning_deg, series(100.0, 0.01, 1.5));
+  set(&PassageFigures::power_w, series(50.0, 0.01, 1.8));
+  set(&PassageFigures::torque_n_m, {1.0, 1.2, 1.1});
+  set(&PassageFigures::mass_flow_kg_s_m, {1.0, 1.0, 1.0});
+  set(&PassageFigures::total_pressure_loss, {1.0, 1.1, 1.3});
+  EXPECT_EQ(error_bars(levels).basis,
+            "2 observed order, 1 observed order out of range, 1 swinging from mesh to mesh, "
+            "1 differing by round-off alone");
+  levels.resize(2);
+  EXPECT_EQ(error_bars(levels).basis, "4 two meshes only, 1 differing by round-off alone");
 }
 
 }  // namespace

@@ -139,7 +139,7 @@ inline PointResult wheel_point(double rpm) {
   f.tangential_force_n = 1.7;
   f.total_pressure_loss = 0.087;
   f.mass_imbalance = 3e-13;
-  auto& e = point.numerical_error;
+  PassageFigures& e = point.numerical_error;
   e = f;
   for (const FigureRow& row : figure_rows()) {
     const double error = 0.004 * std::abs(figure_value(row, f));

@@ -64,6 +64,7 @@ PointResult point(bool wheel) {
   p.pressure = {{1e-3, 1e-3, 5e-324, 1.2e5, 0.4}};
   p.cells = 8000;
   p.seconds = 1.25;
+  p.numerical_error.basis = "21 observed order, 4 differing by round-off alone";
   p.remarks = {"choked", "tab\there, \xc3\xa9"};
   return p;
 }
@@ -86,6 +87,7 @@ void expect_same(const PointResult& a, const PointResult& b) {
   expect_same_figures(a.figures, b.figures);
   for (const FigureRow& row : figure_rows())
     EXPECT_EQ(figure_value(row, a.numerical_error), figure_value(row, b.numerical_error));
+  EXPECT_EQ(a.numerical_error.basis, b.numerical_error.basis);
   EXPECT_EQ(a.solution.status, b.solution.status);
   EXPECT_EQ(a.solution.reason, b.solution.reason);
   EXPECT_EQ(a.solution.residual_drop, b.solution.residual_drop);
@@ -128,10 +130,12 @@ TEST_F(ResultsFileTest, KeysInTheirOrder) {
     return all;
   };
   EXPECT_EQ(keys(json), "title version case_sha256 points ");
-  EXPECT_EQ(keys(json["points"][0]),
-            "id shape speed_rpm blade_speed_m_s speed_ratio inlet exit absolute_exit_velocity_m_s "
-            "turning_deg mass_flow_kg_s_m capacity_ratio total_pressure_loss force torque_n_m "
-            "power_w efficiency balance losses numerical_error solution failure remarks ");
+  EXPECT_EQ(
+      keys(json["points"][0]),
+      "id shape speed_rpm blade_speed_m_s speed_ratio inlet exit absolute_exit_velocity_m_s "
+      "turning_deg mass_flow_kg_s_m capacity_ratio total_pressure_loss force torque_n_m "
+      "power_w efficiency balance losses numerical_error numerical_error_basis solution failure "
+      "remarks ");
   EXPECT_EQ(keys(json["points"][0]["inlet"]),
             "angle_deg mach velocity_m_s pressure_pa total_pressure_pa total_temperature_k ");
   EXPECT_EQ(keys(json["points"][0]["force"]), "tangential_n_m axial_n_m tangential_n axial_n ");
