@@ -12,6 +12,7 @@
 #include "cases/point_solver.h"
 #include "cases/runner.h"
 #include "mesh/mesh_levels_maker.h"
+#include "solver/gas_dynamics.h"
 
 namespace falcate::robustness {
 namespace {
@@ -84,11 +85,11 @@ MatrixRow wheel_row(const std::string& shape, double angle, double pitch_over_wi
   input.nozzle_angle = 20.0 * degree;
   input.nozzle_count = 1;
   input.throat_diameter = 0.002;
-  const double spouting = post::mach_from_pressure_ratio(
+  const double spouting = solver::mach_from_pressure_ratio(
       input.exhaust_pressure / input.supply_pressure, input.gas.heat_capacity_ratio);
   input.nozzle_exit_diameter =
       input.throat_diameter *
-      std::sqrt(spouting > 1.0 ? post::area_ratio(spouting, input.gas.heat_capacity_ratio) : 1.0);
+      std::sqrt(spouting > 1.0 ? solver::area_ratio(spouting, input.gas.heat_capacity_ratio) : 1.0);
   input.blade_height = 0.004;
   input.blade_width = width;
   input.blade_count = blades;
@@ -120,7 +121,7 @@ MatrixRow rig_row(const std::string& shape, double angle, double pitch_over_widt
     input.stream_mach = mach;
     input.stream_angle = (angle + incidences[(i + turn) % incidences.size()]) * degree;
     const double level = exit_pressures[(i + turn / 3) % exit_pressures.size()];
-    const double fall = 1.0 - post::pressure_ratio(mach, input.gas.heat_capacity_ratio);
+    const double fall = 1.0 - solver::pressure_ratio(mach, input.gas.heat_capacity_ratio);
     // Below Mach 1 the fall of pressure varies, so that there always is one.
     const double ratio = mach < 1.0 ? 1.0 - fall * (2.0 - level) : (1.0 - fall) * level;
     input.stream_exit_pressure = input.stream_total_pressure * ratio;
