@@ -8,6 +8,7 @@
 #include <numbers>
 
 #include "post/mixed_out.h"
+#include "post/power_balance.h"
 
 namespace falcate::post {
 namespace {
@@ -192,7 +193,10 @@ PassageFigures passage_figures(const solver::FlowProblem& problem,
   figures.absolute_exit_velocity_m_s =
       std::hypot(exit.u, exit.v + (duty ? duty->blade_speed : 0.0));
   set_forces(figures, problem, solution);
-  if (duty) set_wheel(figures, pitch, *duty);
+  if (duty) {
+    set_wheel(figures, pitch, *duty);
+    set_power_balance(figures, problem.gas, *duty);
+  }
   return figures;
 }
 

@@ -17,7 +17,7 @@ namespace {
 using Json = nlohmann::ordered_json;
 
 constexpr const char* kind = "falcate point";
-constexpr int version = 2;
+constexpr int version = 3;
 
 // One walk over the fields of each structure serves both ways: `a` reads or writes.
 
@@ -51,6 +51,12 @@ void fields(Archive& a, PassageFigures& f) {
   a("axial_force_n", f.axial_force_n);
   a("torque_n_m", f.torque_n_m);
   a("power_w", f.power_w);
+  a("supply_power_w", f.supply_power_w);
+  a("nozzle_loss_w", f.nozzle_loss_w);
+  a("spill_loss_w", f.spill_loss_w);
+  a("entry_loss_w", f.entry_loss_w);
+  a("blade_loss_w", f.blade_loss_w);
+  a("leaving_loss_w", f.leaving_loss_w);
 }
 
 template <class Archive>

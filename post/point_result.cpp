@@ -57,6 +57,15 @@ std::vector<FigureRow> make_rows() {
       figure("efficiency", "blade", "Blade efficiency", "", &P::blade_efficiency, wheel),
       figure("efficiency", "wheel", "Wheel efficiency, total to static", "", &P::wheel_efficiency,
              wheel),
+      figure("", "supply_power_w", "Power of the supply, isentropic", "W", &P::supply_power_w,
+             wheel),
+      figure("losses", "nozzle_w", "Lost in the nozzles", "W", &P::nozzle_loss_w, wheel),
+      figure("losses", "spill_w", "Lost with gas that the passages do not swallow", "W",
+             &P::spill_loss_w, wheel),
+      figure("losses", "entry_w", "Lost between jet and blades", "W", &P::entry_loss_w, wheel),
+      figure("losses", "blade_w", "Lost in the blade passages", "W", &P::blade_loss_w, wheel),
+      figure("losses", "leaving_w", "Leaving with the velocity of the gas", "W", &P::leaving_loss_w,
+             wheel),
   };
 }
 

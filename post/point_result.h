@@ -32,6 +32,9 @@ struct PassageFigures {
   double blade_efficiency = 0.0, wheel_efficiency = 0.0;  ///< 0 for a rig
   double tangential_force_n = 0.0, axial_force_n = 0.0;   ///< all loaded blades; 0 for a rig
   double torque_n_m = 0.0, power_w = 0.0;                 ///< wheel; 0 for a rig
+  double supply_power_w = 0.0;  ///< = power + losses, see power_balance.h; 0 for a rig
+  double nozzle_loss_w = 0.0, spill_loss_w = 0.0, entry_loss_w = 0.0, blade_loss_w = 0.0,
+         leaving_loss_w = 0.0;
 };
 
 /// One row a figure: drives the result files, the error bars, the report's table and the tests.

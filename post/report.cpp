@@ -224,6 +224,8 @@ std::string page(const ReportInput& input) {
       title, report_style, title);
   out += answer(input);
   out += section("speeds", "Against speed", speed_section(input));
+  if (const auto key = key_point(input))
+    out += section("power", "Where the power goes", power_table(input.points[*key]));
   out += section("cautions", "Cautions", cautions_section(input));
   out += section("case", "The case", case_section(input));
   out += section("flow", "The flow", flow_section(input));

@@ -118,6 +118,27 @@ std::string figures_tables(const ReportInput& input) {
   return out;
 }
 
+std::string power_table(const PointResult& point) {
+  const double supply = point.figures.supply_power_w;
+  if (!point.wheel || !stands(point) || !(supply > 0.0)) return "";
+  std::string rows;
+  for (const FigureRow& row : figure_rows()) {
+    const bool part = std::string_view(row.group) == "losses" ||
+                      row.value == &PassageFigures::power_w ||
+                      row.value == &PassageFigures::supply_power_w;
+    if (!part) continue;
+    const double value = figure_value(row, point.figures);
+    const double error = figure_value(row, point.numerical_error);
+    rows += fmt::format("<tr><th scope=\"row\">{}</th><td>{}</td><td>{:.1f}</td></tr>\n",
+                        escape_html(row.title), number_with_error(value, error),
+                        100.0 * value / supply);
+  }
+  return "<table class=\"figures\"><thead><tr><th scope=\"col\">" + escape_html(point_name(point)) +
+         "</th><th scope=\"col\">W</th><th scope=\"col\">% of the supply</th></tr></thead>"
+         "<tbody>\n" +
+         rows + "</tbody></table>\n";
+}
+
 std::string failures_list(const ReportInput& input) {
   std::string out;
   for (const auto& point : input.points) {

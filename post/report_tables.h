@@ -14,6 +14,8 @@ std::string derived_table(const ReportInput& input);
 std::string figures_tables(const ReportInput& input);
 
 /// Points that failed and why; empty where none did.
+/// Shaft power and losses of a wheel's point, W and per cent of the supply; nothing for a rig.
+std::string power_table(const PointResult& point);
 std::string failures_list(const ReportInput& input);
 
 /// How each point was solved: cells, state, residual drop, steps.

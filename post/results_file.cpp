@@ -70,7 +70,6 @@ Json point_json(const PointResult& point) {
   }
   for (const BalanceColumn& column : balance_columns)
     json["balance"][column.key] = stands ? number(point.figures.*column.value) : Json(nullptr);
-  json["losses"] = Json::object();
   json["numerical_error"] = error;
   json["numerical_error_basis"] = point.numerical_error.basis;
   json["solution"] = solution_json(point);

@@ -80,6 +80,10 @@ TEST(Run, WritesResultsThatMeetTheirDescription) {
     EXPECT_GT(point["efficiency"]["blade"].get<double>(), 0.6);
     EXPECT_LT(point["efficiency"]["blade"].get<double>(), 0.883);
     EXPECT_GT(point["numerical_error"]["turning_deg"].get<double>(), 0.0);
+    // Energy: what the supply gives is the shaft power and the losses.
+    double sum = point["power_w"].get<double>();
+    for (const auto& loss : point["losses"]) sum += loss.get<double>();
+    EXPECT_NEAR(sum / point["supply_power_w"].get<double>(), 1.0, 1e-9);
   }
 
   fs::remove(folder.path("results-quick/report.html"));

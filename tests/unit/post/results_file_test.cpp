@@ -130,25 +130,26 @@ TEST_F(ResultsFileTest, KeysInTheirOrder) {
     return all;
   };
   EXPECT_EQ(keys(json), "title version case_sha256 points ");
-  EXPECT_EQ(
-      keys(json["points"][0]),
-      "id shape speed_rpm blade_speed_m_s speed_ratio inlet exit absolute_exit_velocity_m_s "
-      "turning_deg mass_flow_kg_s_m capacity_ratio total_pressure_loss force torque_n_m "
-      "power_w efficiency balance losses numerical_error numerical_error_basis solution failure "
-      "remarks ");
+  EXPECT_EQ(keys(json["points"][0]),
+            "id shape speed_rpm blade_speed_m_s speed_ratio inlet exit absolute_exit_velocity_m_s "
+            "turning_deg mass_flow_kg_s_m capacity_ratio total_pressure_loss force torque_n_m "
+            "power_w efficiency supply_power_w losses balance numerical_error "
+            "numerical_error_basis solution failure "
+            "remarks ");
   EXPECT_EQ(keys(json["points"][0]["inlet"]),
             "angle_deg mach velocity_m_s pressure_pa total_pressure_pa total_temperature_k ");
   EXPECT_EQ(keys(json["points"][0]["force"]), "tangential_n_m axial_n_m tangential_n axial_n ");
   EXPECT_EQ(keys(json["points"][0]["efficiency"]), "blade wheel ");
   EXPECT_EQ(keys(json["points"][0]["numerical_error"]),
             "inlet exit absolute_exit_velocity_m_s turning_deg mass_flow_kg_s_m capacity_ratio "
-            "total_pressure_loss force torque_n_m power_w efficiency ");
+            "total_pressure_loss force torque_n_m power_w efficiency supply_power_w losses ");
+  EXPECT_EQ(keys(json["points"][0]["losses"]), "nozzle_w spill_w entry_w blade_w leaving_w ");
 }
 
 TEST_F(ResultsFileTest, RigHasTheFlowPartAlone) {
   write_results_json({"t", "0.1.0", "abc", {point(false)}}, path("a.json"));
   const auto json = nlohmann::json::parse(read_whole_file(path("a.json")))["points"][0];
-  for (const char* key : {"speed_rpm", "efficiency", "capacity_ratio", "torque_n_m"})
+  for (const char* key : {"speed_rpm", "efficiency", "capacity_ratio", "torque_n_m", "losses"})
     EXPECT_FALSE(json.contains(key)) << key;
   for (const char* key : {"turning_deg", "total_pressure_loss", "force"})
     EXPECT_TRUE(json.contains(key)) << key;
