@@ -13,6 +13,7 @@
 #include "mesh/curved_mesh.h"
 #include "mesh/mesher_process.h"
 #include "mesh/passage_boundary.h"
+#include "mesh/program_directory.h"
 #include "mesh/size_field.h"
 
 namespace falcate::mesh {

@@ -16,7 +16,6 @@
 #include <cmath>
 #include <cstddef>
 #include <cstring>
-#include <filesystem>
 
 #include "mesh/passage_mesh.h"
 
@@ -241,14 +240,6 @@ MesherAnswer MesherProcess::fill(const MesherRequest& request) {
 bool await_request() {
   char byte = 0;
   return recv(kSignalDescriptor, &byte, 1, 0) == 1;
-}
-
-std::string mesher_beside_this_program() {
-  std::error_code error;
-  const auto self = std::filesystem::read_symlink("/proc/self/exe", error);
-  if (error)
-    throw MeshError("the directory of this program cannot be found, and the mesher lies there");
-  return (self.parent_path() / "falcate-mesher").string();
 }
 
 MesherRequest read_request() {

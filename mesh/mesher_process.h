@@ -34,9 +34,6 @@ constexpr int kRequestDescriptor = 3;
 constexpr int kAnswerDescriptor = 4;
 constexpr int kSignalDescriptor = 5;
 
-/// The mesher that belongs to the running program: in the same directory.
-std::string mesher_beside_this_program();
-
 /// A running mesher; ended with the object. The time limit is for all that it does together.
 class MesherProcess {
  public:
