@@ -97,6 +97,8 @@ T mean_tangential(std::span<const T> j, std::span<const T> dv, const InletStream
     mean -= change;
     if (std::abs(change) <= 1e-15) break;
   }
+  // While gas pours back out of a first guess no mean direction fits: keep to the given one.
+  if (!(std::abs(mean) <= std::sqrt(2.0 * s.gamma / (s.gamma - 1.0)))) return T(start);
   return T(mean) - angle_error<T>(j, dv, T(mean), s, waves) / slope;
 }
 

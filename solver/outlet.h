@@ -7,7 +7,9 @@
 ///   beta = i sgn(l) sqrt(1 - M^2) below, -sgn(v) sqrt(M^2 - 1) above Mach 1.
 /// The level P is such that the uniform stream with the same mass, momentum and energy flow has the
 /// set pressure. Where the axial part is supersonic everything leaves: the cell's state.
-/// Source: Giles, AIAA J. 28(12) (1990) 2050-2058.
+/// Where a vortex draws gas back in through the plane, that gas comes from rest behind the row: its
+/// total pressure is P (1 + ...) and its total enthalpy that of the supply, so that no energy
+/// enters which the stream did not bring. Source: Giles, AIAA J. 28(12) (1990) 2050-2058.
 #pragma once
 #include <algorithm>
 #include <span>
@@ -35,7 +37,7 @@ struct WaveCoefficients {
   double local2, local3, hilbert2 = 0.0, hilbert3 = 0.0;
 };
 
-inline WaveCoefficients wave_coefficients(const OutletStream& s) {
+inline WaveCoefficients exact_coefficients(const OutletStream& s) {
   const double v = s.v;
   if (s.mach_squared > 1.0) {
     const double beta = (v < 0.0 ? 1.0 : -1.0) * std::sqrt(s.mach_squared - 1.0);
@@ -45,13 +47,57 @@ inline WaveCoefficients wave_coefficients(const OutletStream& s) {
   return {-2.0 * s.u * v / size, (v * v - b * b) / size, 2.0 * s.u * b / size, -2.0 * v * b / size};
 }
 
+/// As the axial Mach number nears 1 with little swirl the exact ones grow without bound, and with
+/// them any error: there waves are answered in part only.
+inline WaveCoefficients wave_coefficients(const OutletStream& s) {
+  constexpr double greatest = 3.0;
+  WaveCoefficients k = exact_coefficients(s);
+  const double size = std::hypot(k.local2, k.hilbert2);
+  if (!(size > greatest)) return k;
+  const double part = greatest / size;
+  return {part * k.local2, part * k.local3, part * k.hilbert2, part * k.hilbert3};
+}
+
+/// Isentropic change of the cell's state to pressure p with the invariant u + 2a/(gamma-1).
 template <class T>
-State<T> let_out(const State<T>& cell, const T& p, double gamma) {
+State<T> at_pressure(const State<T>& cell, const T& p, double gamma) {
   using std::pow;
   const T rho = cell[density] * pow(T(p / cell[pressure]), 1.0 / gamma);
   const State<T> out = {rho, cell[1], cell[2], p};
   const T change = speed_of_sound(cell, gamma) - speed_of_sound(out, gamma);
   return {rho, cell[1] + 2.0 / (gamma - 1.0) * change, cell[2], p};
+}
+
+/// Gas drawn back in from rest at pressure p and the supply's total enthalpy, with the cell's
+/// tangential velocity; at most as fast as sound, as through an orifice.
+template <class T>
+State<T> drawn_in(const State<T>& wanted, const T& p, double gamma) {
+  using std::pow;
+  using std::sqrt;
+  const double total = gamma / (gamma - 1.0), sonic = std::sqrt(2.0 * gamma / (gamma + 1.0));
+  const T v = larger(smaller(wanted[velocity_y], T(sonic)), T(-sonic));
+  const T still = total - 0.5 * v * v;
+  const T u = larger(wanted[velocity_x], T(-sqrt(2.0 * (gamma - 1.0) / (gamma + 1.0) * still)));
+  const T left = still - 0.5 * u * u;
+  const T pressure = p * pow(T(left / still), total);
+  return {total * pressure / left, u, v, pressure};
+}
+
+template <class T>
+State<T> let_out(const State<T>& cell, const T& p, double gamma) {
+  const State<T> out = at_pressure(cell, p, gamma);
+  if (value_of(out[velocity_x]) >= 0.0) return out;
+  return drawn_in(out, p, gamma);
+}
+
+/// Level P with a wave on it. Waves beyond the linear theory are held to 0.6 P, so that a vortex or
+/// shock on its way out does not empty the cells at the plane.
+template <class T>
+T with_wave(const T& level, const T& half) {
+  using std::pow;
+  constexpr double greatest = 0.6;
+  const T x = half / (greatest * level), square = x * x;
+  return level + half * pow(T(1.0 + square * square), -0.25);
 }
 
 /// Error of the mixed-out pressure at level P, the waves `half` = (c3 + c4)/2 riding on it.
@@ -60,7 +106,7 @@ T pressure_error(std::span<const State<T>> cells, std::span<const T> half, const
                  const OutletStream& s, const PlaneWaves& waves) {
   State<T> sum{T(0.0), T(0.0), T(0.0), T(0.0)};
   for (std::size_t i = 0; i < cells.size(); ++i) {
-    const State<T> q = let_out(cells[i], positive_step(level, half[i]), s.gamma);
+    const State<T> q = let_out(cells[i], with_wave(level, half[i]), s.gamma);
     const State<T> f = physical_flux(q, mesh::Point(1.0, 0.0), s.gamma);
     for (std::size_t k = 0; k < 4; ++k) sum[k] += waves.weight(i) * f[k];
   }
@@ -88,7 +134,8 @@ T pressure_level(std::span<const State<T>> cells, std::span<const T> half, const
   }
   // Where a first guess has no such level (the mean stream would be axially supersonic) the plain
   // pressure serves until the flow nears its answer.
-  if (!(std::abs(change) <= 1e-12 * level) || level < 0.1 * s.pressure) return T(s.pressure);
+  if (!(std::abs(change) <= 1e-12 * level) || level < 0.1 * s.pressure || level > 3.0 * s.pressure)
+    return T(s.pressure);
   return T(level) - pressure_error<T>(cells, half, T(level), s, waves) / slope;
 }
 
@@ -126,7 +173,8 @@ void outlet_states(std::span<const State<T>> cells, const OutletStream& s, const
   const std::vector<T> half = outlet_detail::half_waves(cells, s, waves);
   const T level = outlet_detail::pressure_level<T>(cells, half, s, waves);
   for (std::size_t i = 0; i < cells.size(); ++i)
-    boundary[i] = outlet_detail::let_out(cells[i], positive_step(level, half[i]), s.gamma);
+    boundary[i] =
+        outlet_detail::let_out(cells[i], outlet_detail::with_wave(level, half[i]), s.gamma);
 }
 
 }  // namespace falcate::solver

@@ -26,6 +26,12 @@ struct Manner {
 };
 constexpr Manner bold{0.3, 2.0}, cautious{0.4, 1.05};
 constexpr int bold_steps = 50;
+/// Of the averaging time asked for: an average over less says nothing.
+constexpr double least_time_averaged = 0.25;
+
+/// Of density and pressure, the gas at rest being 1: no cell falls below the first; changes of a
+/// cell below the second do not shorten a step; a step may bring a cell to twice its own and this.
+constexpr double all_but_empty = 1e-6, thin = 1e-2, much = 0.05;
 
 double norm(const Cells& residual) {
   double sum = 0.0;
@@ -87,18 +93,26 @@ class March {
 
   bool finite() const { return std::isfinite(size_); }
 
-  /// One step of true time, linearised implicit Euler: (V M / dt + dR/dq) dq = -R.
-  ConvergencePoint time_step(int number, double dt) {
+  /// One step of true time by linearised implicit Euler, (V M / dt + dR/dq) dq = -R, shorter where
+  /// a cell would change too much.
+  ConvergencePoint time_step(int number, double longest) {
+    follow_planes();
+    evaluate();
     linearise();
-    const auto& areas = residual_.mesh().areas();
-    std::vector<double> rates(areas.size());
-    std::transform(areas.begin(), areas.end(), rates.begin(), [&](double v) { return v / dt; });
-    add_to_diagonal(rates);
-    const Vector change = solve_linear();
-    const double part = change.allFinite() ? allowed_part(change) : 0.0;
-    move(Cells(cells_), part, change);
+    time_step_ = std::min(longest, time_step_ > 0.0 ? 2.0 * time_step_ : longest);
+    add_time(1.0 / time_step_);
+    Vector change = solve_linear();
+    for (int cut = 0; cut < 3 && !(change.allFinite() && allowed_part(change) > 0.99); ++cut) {
+      add_time(3.0 / time_step_);
+      time_step_ *= 0.25;
+      change = solve_linear();
+    }
+    if (change.allFinite()) move(Cells(cells_), 1.0, change);
     return {number, drop(), cfl_, linear_.iterations};
   }
+
+  /// Length of the last step of true time.
+  double last_time_step() const { return time_step_; }
 
   /// A fiftieth of the time the reference speed needs from plane to plane.
   double time_step_length() const {
@@ -126,9 +140,40 @@ class March {
   /// A part of the change, and the residual there.
   void move(const Cells& from, double part, const Vector& change) {
     for (std::size_t i = 0; i < cells_.size(); ++i)
-      for (std::size_t k = 0; k < 4; ++k)
-        cells_[i][k] = from[i][k] + part * change(static_cast<Eigen::Index>(4 * i + k));
+      for (std::size_t k = 0; k < 4; ++k) {
+        const double step = part * change(static_cast<Eigen::Index>(4 * i + k));
+        cells_[i][k] = k == density || k == pressure ? moved_quantity(from[i][k], step)
+                                                     : moved_velocity(from[i][k] + step);
+      }
     evaluate();
+  }
+
+  /// The mean states on the planes follow an unsteady flow slowly: they are those of its average.
+  void follow_planes() {
+    constexpr double share = 0.1;
+    const InletStream in = problem_.inlet;
+    const OutletStream out = problem_.outlet;
+    refresh_planes(problem_, cells_);
+    const auto mix = [](double& now, double before) { now = before + share * (now - before); };
+    mix(problem_.inlet.u, in.u);
+    mix(problem_.inlet.v, in.v);
+    mix(problem_.inlet.impedance, in.impedance);
+    mix(problem_.inlet.beta, in.beta);
+    mix(problem_.outlet.u, out.u);
+    mix(problem_.outlet.v, out.v);
+    mix(problem_.outlet.impedance, out.impedance);
+    mix(problem_.outlet.mach_squared, out.mach_squared);
+    problem_.outlet.axially_supersonic = problem_.outlet.u > 1.0;
+  }
+
+  /// Density and pressure stay those of a gas: cells all but empty hold up neither the others nor
+  /// the whole march, and none takes in more than it can.
+  static double moved_quantity(double from, double step) {
+    return std::clamp(positive_step(from, step), all_but_empty, 2.0 * from + much);
+  }
+  double moved_velocity(double velocity) const {
+    const double greatest = 1.2 * std::sqrt(2.0 * problem_.gamma / (problem_.gamma - 1.0));
+    return std::clamp(velocity, -greatest, greatest);
   }
 
   void evaluate() {
@@ -148,6 +193,13 @@ class March {
   void add_pseudo_time() {
     auto rates = residual_.spectral_sums(cells_);
     for (double& rate : rates) rate /= cfl_;
+    add_to_diagonal(rates);
+  }
+
+  /// V M / dt on the diagonal.
+  void add_time(double rate) {
+    std::vector<double> rates = residual_.mesh().areas();
+    for (double& value : rates) value *= rate;
     add_to_diagonal(rates);
   }
 
@@ -180,7 +232,7 @@ class March {
     for (std::size_t i = 0; i < cells_.size(); ++i)
       for (const std::size_t k : {std::size_t{density}, std::size_t{pressure}}) {
         const double relative =
-            std::abs(change(static_cast<Eigen::Index>(4 * i + k))) / cells_[i][k];
+            std::abs(change(static_cast<Eigen::Index>(4 * i + k))) / std::max(cells_[i][k], thin);
         if (relative * part > manner_.largest_change) part = manner_.largest_change / relative;
       }
     return part;
@@ -233,6 +285,7 @@ class March {
   std::vector<State<double>> fluxes_;
   GmresSummary linear_;
   Manner manner_ = bold;
+  double time_step_ = 0.0;
   double cfl_ = 1.0, size_ = 0.0, reference_ = 1.0;
   long krylov_ = 0, evaluations_ = 0;
 };
@@ -240,34 +293,37 @@ class March {
 /// Running mean of a solution in time.
 class TimeMean {
  public:
-  void add(const FlowSolution& now, bool second_half) {
+  /// `length` of the time step that ended in `now`.
+  void add(const FlowSolution& now, bool second_half, double length) {
     if (sum_.cells.empty()) {
       sum_.cells.resize(now.cells.size());
       sum_.boundary.resize(now.boundary.size());
       sum_.halves.fill(sum_.boundary);
     }
     for (std::size_t i = 0; i < now.cells.size(); ++i) {
-      sum_.cells[i].density += now.cells[i].density;
-      sum_.cells[i].u += now.cells[i].u;
-      sum_.cells[i].v += now.cells[i].v;
-      sum_.cells[i].pressure += now.cells[i].pressure;
+      sum_.cells[i].density += length * now.cells[i].density;
+      sum_.cells[i].u += length * now.cells[i].u;
+      sum_.cells[i].v += length * now.cells[i].v;
+      sum_.cells[i].pressure += length * now.cells[i].pressure;
     }
-    std::vector<BoundaryFlux>& half = sum_.halves[second_half ? 1 : 0];
-    for (std::size_t i = 0; i < half.size(); ++i) add_scaled(half[i], now.boundary[i], 1.0);
-    ++count_;
+    const std::size_t half = second_half ? 1 : 0;
+    for (std::size_t i = 0; i < now.boundary.size(); ++i)
+      add_scaled(sum_.halves[half][i], now.boundary[i], length);
+    lengths_[half] += length;
   }
 
-  /// The two halves have the same number of samples.
+  double length() const { return lengths_[0] + lengths_[1]; }
+
   FlowSolution mean() const {
     FlowSolution out = sum_;
-    const double share = 1.0 / count_;
+    const double share = 1.0 / length();
     for (Primitive& q : out.cells)
       q = {q.density * share, q.u * share, q.v * share, q.pressure * share};
-    for (auto& half : out.halves)
-      for (std::size_t i = 0; i < half.size(); ++i) {
-        const BoundaryFlux sum = half[i];
-        half[i] = {};
-        add_scaled(half[i], sum, 2.0 * share);
+    for (std::size_t half = 0; half < 2; ++half)
+      for (std::size_t i = 0; i < out.boundary.size(); ++i) {
+        const BoundaryFlux sum = sum_.halves[half][i];
+        out.halves[half][i] = {};
+        add_scaled(out.halves[half][i], sum, 1.0 / lengths_[half]);
         add_scaled(out.boundary[i], sum, share);
       }
     return out;
@@ -281,7 +337,7 @@ class TimeMean {
     to.energy += factor * f.energy;
   }
   FlowSolution sum_;
-  int count_ = 0;
+  std::array<double, 2> lengths_{};
 };
 
 }  // namespace
@@ -310,10 +366,13 @@ FlowSolution solve_steady(const FlowProblem& problem, const SteadyOptions& optio
     for (int n = 0; n < 3 * half && march.finite(); ++n) {
       history.push_back(march.time_step(++step, march.time_step_length()));
       if (observer) observer(history.back());
-      if (n >= half && march.finite()) mean.add(march.solution(), averaged++ >= half);
+      if (n >= half && march.finite())
+        mean.add(march.solution(), averaged++ >= half, march.last_time_step());
     }
   }
-  const bool mean_stands = averaged > 0 && averaged == 2 * half;
+  const bool whole = averaged > 0 && averaged == 2 * half;
+  const bool mean_stands =
+      whole && mean.length() >= least_time_averaged * averaged * march.time_step_length();
   FlowSolution solution = mean_stands ? mean.mean() : march.solution();
   SteadySummary& summary = solution.summary;
   summary = march.solution().summary;
@@ -324,6 +383,7 @@ FlowSolution solve_steady(const FlowProblem& problem, const SteadyOptions& optio
                                  : SolutionStatus::failed;
   summary.reason = steady        ? "residual at its target"
                    : mean_stands ? "no steady flow found; averaged over time"
+                   : whole       ? "its time steps had to be too short to average over"
                    : stuck       ? "no step lowers the residual any more"
                                  : "step limit reached before the residual target";
   summary.seconds = std::chrono::duration<double>(std::chrono::steady_clock::now() - began).count();

@@ -5,7 +5,8 @@
 /// (factors of the second-order one alone are unstable at low Mach number); CFL grows as the
 /// residual falls, so the last steps are Newton's own. Where no steady flow is found, the flow is
 /// marched in time by implicit Euler steps of one fiftieth of the passage time (plane to plane at
-/// the reference speed), first to forget its start, then to be averaged; the solution says so.
+/// the reference speed), shorter where a cell would change too much, first to forget its start, then
+/// to be averaged; the solution says so. Cells all but empty of gas stop neither way.
 ///
 /// Sources: Kelley & Keyes, SIAM J. Numer. Anal. 35(2) (1998) 508-523 (pseudo-transient
 /// continuation); Knoll & Keyes, J. Comput. Phys. 193 (2004) 357-397.
