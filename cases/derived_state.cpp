@@ -6,6 +6,7 @@
 #include <cmath>
 #include <numbers>
 
+#include "cases/flow_remarks.h"
 #include "cases/wheel_safety.h"
 #include "post/gas_properties.h"
 #include "solver/gas_dynamics.h"
@@ -151,8 +152,9 @@ void starting_caution(const Case& input, const BladeRow& row,
     if (area >= limit) continue;
     state.cautions.push_back(fmt::format(
         "{}: throat over inlet stream width is {:.3f}, below the starting limit of {:.3f} at Mach "
-        "{:.2f}; a shock may stand ahead of the blades and gas spill past them",
-        points.size() == 1 ? "Passage" : "Passage at " + point.id, area, limit, point.inlet_mach));
+        "{:.2f}; {}; a shock may stand ahead of the blades and gas spill past them",
+        points.size() == 1 ? "Passage" : "Passage at " + point.id, area, limit, point.inlet_mach,
+        starting_words(area, input.gas.heat_capacity_ratio)));
   }
 }
 

@@ -7,7 +7,10 @@
 #include <exception>
 #include <numbers>
 
+#include "cases/blade_row.h"
+#include "cases/flow_remarks.h"
 #include "post/error_bar.h"
+#include "post/mixed_out.h"
 #include "post/passage_figures.h"
 #include "solver/steady_solver.h"
 
@@ -156,25 +159,54 @@ class PointSolver {
       if (again.summary.residual_drop < solution.summary.residual_drop) solution = std::move(again);
     }
     const bool settled = solution.summary.status != solver::SolutionStatus::failed;
-    if (settled) {
-      figures_.push_back(post::passage_figures(problem(level), solution, point_.duty));
-      solved_.states[level] = solution.cells;
-    } else {
-      figures_.clear();  // the error bar needs neighbouring levels
-      if (level + 1 < meshes_.levels.size())
-        solved_.result.remarks.push_back(
-            fmt::format("On the mesh of {} cells the flow did not settle: {}.",
-                        meshes_.levels[level].cell_count(), solution.summary.reason));
-    }
     finest_ = std::move(solution);
+    const std::string trouble = settled ? add_figures(level) : finest_.summary.reason;
+    if (trouble.empty()) {
+      solved_.states[level] = finest_.cells;
+      return;
+    }
+    finest_.summary.status = solver::SolutionStatus::failed;
+    finest_.summary.reason = trouble;
+    figures_.clear();  // the error bar needs neighbouring levels
+    if (level + 1 < meshes_.levels.size())
+      solved_.result.remarks.push_back(
+          fmt::format("On the mesh of {} cells the flow did not settle: {}.",
+                      meshes_.levels[level].cell_count(), trouble));
+  }
+
+  /// Returns why there are none, or nothing.
+  std::string add_figures(std::size_t level) {
+    try {
+      figures_.push_back(post::passage_figures(problem(level), finest_, point_.duty));
+    } catch (const post::MixedOutError& error) {
+      return error.what();
+    }
+    return {};
+  }
+
+  EntryFacts entry() const {
+    const double stream = row_pitch(case_) * std::sin(point_.inlet.angle);
+    return {point_.inlet_mach,
+            point_.inlet.angle,
+            make_blade_row(case_).throat / stream,
+            case_.gas.heat_capacity_ratio,
+            point_.exit_pressure,
+            case_.kind == CaseKind::wheel};
   }
 
   void gather() {
     post::PointResult& result = solved_.result;
     result.solution = finest_.summary;
     if (finest_.summary.status == solver::SolutionStatus::failed) {
-      result.failure = fmt::format("the flow did not settle: {} (residual fell to {:.1e})",
+      const std::string words =
+          unsolved_words(entry(), unsolved_flow(problem(meshes_.levels.size() - 1), finest_));
+      result.failure = fmt::format("{}: {} (residual fell to {:.1e})", words,
                                    finest_.summary.reason, finest_.summary.residual_drop);
+      return;
+    }
+    if (figures_.size() < 2) {
+      result.failure =
+          "the flow was solved on the finest mesh alone, so that its figures have no error bars";
       return;
     }
     result.figures = figures_.back();
@@ -207,17 +239,8 @@ class PointSolver {
 
   void add_remarks() {
     post::PointResult& result = solved_.result;
-    if (behind_shock_)
-      result.remarks.push_back(fmt::format(
-          "The passage does not start at relative Mach {:.2f}: a shock stands before the blades "
-          "(computed as a normal shock) and the gas enters below the speed of sound.",
-          *point_.inlet.mach));
-    if (result.wheel && result.figures.capacity_ratio < 0.98)
-      result.remarks.push_back(fmt::format(
-          "The passage swallows {:.0f} % of the gas that the jet offers; the rest spills past it.",
-          100.0 * result.figures.capacity_ratio));
-    if (result.wheel && result.figures.tangential_force_n_m < 0.0)
-      result.remarks.push_back("The gas brakes the wheel: this speed is beyond runaway.");
+    for (std::string& remark : flow_remarks(entry(), result.figures, behind_shock_))
+      result.remarks.push_back(std::move(remark));
     if (figures_.size() < meshes_.levels.size())
       result.remarks.push_back("The error bars rest on fewer than three meshes.");
     if (case_.friction) result.remarks.push_back("Friction is not counted in this version.");

@@ -62,7 +62,7 @@ class Run {
     std::vector<OperatingPoint> points;
     std::vector<SolvedPoint> solved;
     for (std::size_t i = 0; i < points_.size(); ++i) {
-      if (!kept_[i]) continue;
+      if (!kept_[i] && !load_failed(i)) continue;
       points.push_back(points_[i]);
       solved.push_back(solved_[i]);
     }
@@ -91,6 +91,14 @@ class Run {
       ++kept;
     }
     observer_.meshed(static_cast<int>(points_.size()), kept, meshes_.levels.back().cell_count());
+  }
+
+  /// A point that was tried and failed, with its reason.
+  bool load_failed(std::size_t i) {
+    auto point = folder_.point(points_[i].id);
+    if (!point || point->result.failure.empty()) return false;
+    solved_[i] = std::move(*point);
+    return true;
   }
 
   void guarded_chain(const std::pair<int, int>& part) {

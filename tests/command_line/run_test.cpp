@@ -104,6 +104,32 @@ TEST(Run, RecordsPointsThatFailAndSaysSoByItsStatus) {
   for (const auto& point : json["points"]) EXPECT_EQ(point["solution"]["status"], "failed");
 }
 
+TEST(Report, OfARunInWhichEveryPointFailedTellsWhichAndWhy) {
+  const ScratchFolder folder;
+  folder.write("hasty.toml", quick_case() + "max_steps = 5\naveraging_steps = 0\n");
+  ASSERT_EQ(falcate(folder, "run hasty.toml --out hasty").status, 3);
+  const std::string first = content(folder.path("hasty/report.html"));
+  fs::remove(folder.path("hasty/report.html"));
+  const Outcome report = falcate(folder, "report hasty");
+  EXPECT_EQ(report.status, 0) << report.err;
+  EXPECT_EQ(report.out, "Report of 4 points: hasty/report.html\n");
+  EXPECT_EQ(content(folder.path("hasty/report.html")), first);
+  EXPECT_THAT(first, HasSubstr("No point could be solved; the reasons stand below."));
+  EXPECT_THAT(first, HasSubstr("Points that failed"));
+  EXPECT_THAT(first, HasSubstr("step limit reached before the residual target"));
+}
+
+TEST(Report, OfARunThatFinishedNoPointIsRefused) {
+  const ScratchFolder folder;
+  folder.write("hasty.toml", quick_case() + "max_steps = 5\naveraging_steps = 0\n");
+  ASSERT_EQ(falcate(folder, "run hasty.toml --out hasty").status, 3);
+  for (const char* point : {"point-01", "point-02", "point-03", "point-04"})
+    fs::remove(folder.path(std::string("hasty/points/") + point + ".json"));
+  const Outcome report = falcate(folder, "report hasty");
+  EXPECT_EQ(report.status, 2);
+  EXPECT_EQ(report.err, "no point is finished yet; go on with the run first\n");
+}
+
 TEST(Run, OfABadCaseWritesNothing) {
   const ScratchFolder folder;
   folder.write("good.toml", quick_case());
