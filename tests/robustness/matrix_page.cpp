@@ -3,7 +3,9 @@
 #include <fmt/format.h>
 
 #include <algorithm>
+#include <cmath>
 #include <functional>
+#include <numbers>
 
 #include "post/point_record.h"
 
@@ -21,7 +23,7 @@ bool remark_has(const Answer& a, const char* words) {
 }
 
 double axial_mach(const Answer& a) {
-  return a.relative_mach * std::sin(a.flow_angle_deg * 0.017453292519943295);
+  return a.relative_mach * std::sin(a.flow_angle_deg * std::numbers::pi / 180.0);
 }
 
 const std::vector<Group>& groups() {

@@ -28,6 +28,15 @@ const std::vector<double> rig_machs{0.1, 0.3, 0.5, 0.7, 0.85, 1.0, 1.15, 1.3, 1.
 const std::vector<double> incidences{0.0, 4.0, -3.0};      ///< deg, of the rig's stream
 const std::vector<double> exit_pressures{1.0, 0.9, 1.05};  ///< over the inlet's, of the rig
 
+/// Pitch over width that leaves room for the bend of a channel blade: the passage must not be wider
+/// than the radius of its bend.
+double fitting_pitch(const std::string& shape, double angle_deg, double pitch_over_width) {
+  constexpr double widest_passage = 0.52;
+  return shape == "channel"
+             ? std::min(pitch_over_width, widest_passage / std::sin(angle_deg * degree))
+             : pitch_over_width;
+}
+
 /// A blade of this angle that fits the pitch: walls thin enough for steep spacing, a passage narrow
 /// enough for its bend.
 void set_blade(cases::Case& input, const std::string& shape, double angle, double pitch) {
@@ -168,11 +177,15 @@ std::vector<MatrixRow> matrix_rows(int cells) {
       for (std::size_t k = 0; k < 2; ++k, ++turn)
         // Steps that share no divisor with the lengths: every pitch meets every shape, and Mach
         // numbers go through the angles.
-        rows.push_back(wheel_row(shape, blade_angles[a], pitches[(5 * a + 3 * k + 1) % 6],
-                                 jet_machs[(3 * turn + turn / 8) % 8], cells));
+        rows.push_back(
+            wheel_row(shape, blade_angles[a],
+                      fitting_pitch(shape, blade_angles[a], pitches[(5 * a + 3 * k + 1) % 6]),
+                      jet_machs[(3 * turn + turn / 8) % 8], cells));
   for (const char* shape : {"channel", "cup"})
     for (std::size_t a = 0; a < blade_angles.size(); ++a, ++turn)
-      rows.push_back(rig_row(shape, blade_angles[a], pitches[(a + turn / 5) % 6], turn, cells));
+      rows.push_back(rig_row(shape, blade_angles[a],
+                             fitting_pitch(shape, blade_angles[a], pitches[(a + turn / 5) % 6]),
+                             turn, cells));
   return rows;
 }
 

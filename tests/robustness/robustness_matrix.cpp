@@ -8,10 +8,10 @@
 #include <cstdlib>
 #include <cstring>
 #include <exception>
-#include <fstream>
 #include <mutex>
 #include <thread>
 
+#include "post/whole_file.h"
 #include "robustness/matrix_page.h"
 #include "robustness/matrix_rows.h"
 
@@ -54,6 +54,17 @@ void say(const Answer& a) {
   std::fflush(stdout);
 }
 
+/// Written after every row, so that a matrix that is stopped leaves what it has.
+void write_page(const std::vector<std::vector<Answer>>& answers, const Arguments& arguments) {
+  std::vector<Answer> all;
+  for (const auto& part : answers) all.insert(all.end(), part.begin(), part.end());
+  const std::string page = matrix_page(all, arguments.cells);
+  if (arguments.out.empty())
+    fmt::print("{}", page);
+  else
+    post::write_whole_file(arguments.out, page);
+}
+
 int run(const Arguments& arguments) {
   const std::vector<MatrixRow> rows = matrix_rows(arguments.cells);
   const std::size_t last = std::min(arguments.last, rows.size());
@@ -64,31 +75,26 @@ int run(const Arguments& arguments) {
   const auto work = [&] {
     omp_set_num_threads(1);
     for (std::size_t i = next++; i < last; i = next++) {
+      std::vector<Answer> found;
+      std::string trouble;
       try {
-        answers[i] = solve_row(rows[i]);
+        found = solve_row(rows[i]);
       } catch (const std::exception& error) {
-        const std::lock_guard<std::mutex> lock(mutex);
-        fmt::print("{}: {}\n", rows[i].name, error.what());
-        whole = false;
+        trouble = error.what();
       }
       const std::lock_guard<std::mutex> lock(mutex);
-      for (const Answer& answer : answers[i]) say(answer);
+      for (const Answer& answer : found) say(answer);
+      if (!trouble.empty()) fmt::print("{}: {}\n", rows[i].name, trouble);
+      whole = whole && trouble.empty();
+      answers[i] = std::move(found);
+      if (!arguments.out.empty()) write_page(answers, arguments);
     }
   };
   {
     std::vector<std::jthread> crew;
     for (int k = 0; k < arguments.workers; ++k) crew.emplace_back(work);
   }
-  std::vector<Answer> all;
-  for (auto& part : answers) all.insert(all.end(), part.begin(), part.end());
-  const std::string page = matrix_page(all, arguments.cells);
-  if (arguments.out.empty()) {
-    fmt::print("{}", page);
-  } else {
-    std::ofstream file(arguments.out);
-    file << page;
-    if (!file.flush()) return 4;
-  }
+  write_page(answers, arguments);
   return whole ? 0 : 3;
 }
 
