@@ -108,7 +108,8 @@ class PointSolver {
 
   States prolonged(std::size_t level, const LevelStates& states) const {
     if (level == 0 || states.size() <= level - 1 || states[level - 1].empty()) return {};
-    return solver::prolong(states[level - 1], meshes_.parent[level]);
+    return solver::prolong(states[level - 1], meshes_.levels[level - 1], meshes_.levels[level],
+                           meshes_.parent[level]);
   }
 
   States start(std::size_t level) const {

@@ -28,14 +28,14 @@ void BlockMatrix::set_zero() {
   for (auto& block : blocks_) block.setZero();
 }
 
-void BlockMatrix::multiply(const Vector& x, Vector& y) const {
-  y.resize(x.size());
+void BlockMatrix::residual(const SingleVector& b, const SingleVector& x, SingleVector& r) const {
+  r.resize(b.size());
 #pragma omp parallel for schedule(static)
   for (int row = 0; row < rows(); ++row) {
-    Eigen::Vector4d sum = Eigen::Vector4d::Zero();
+    Eigen::Vector4f sum = b.segment<4>(4 * row);
     for (std::size_t k = begin(row); k < end(row); ++k)
-      sum.noalias() += blocks_[k] * x.segment<4>(4 * columns_[k]);
-    y.segment<4>(4 * row) = sum;
+      sum.noalias() -= blocks_[k] * x.segment<4>(4 * columns_[k]);
+    r.segment<4>(4 * row) = sum;
   }
 }
 

@@ -1,5 +1,4 @@
-/// Incomplete LU factors of a block matrix with a level of fill, block ILU(k), kept in single
-/// precision: a preconditioner needs no more, and half the memory is read.
+/// Incomplete LU factors of a block matrix with a level of fill, block ILU(k).
 /// An entry made by eliminating through entries of levels a and b has level a + b + 1; entries of
 /// the matrix have level 0; those above k are dropped.
 /// Source: Saad, Iterative Methods for Sparse Linear Systems, 2nd ed. 2003, sec. 10.3.
@@ -9,21 +8,27 @@
 
 namespace falcate::solver {
 
+/// Rows first, ..., last - 1.
+struct RowRange {
+  int first, last;
+  int size() const { return last - first; }
+};
+
 class IncompleteLu {
  public:
-  /// Lays out the factors for matrices of this pattern.
+  /// Lays out the factors for matrices of this pattern; of a part of its rows only where told so,
+  /// leaving out the couplings to other rows.
   IncompleteLu(const BlockMatrix& matrix, int level_of_fill);
+  IncompleteLu(const BlockMatrix& matrix, int level_of_fill, RowRange rows);
   void factor(const BlockMatrix& matrix);
-  /// x = (LU)^-1 b
-  void solve(const Vector& b, Vector& x) const;
+  /// x = (LU)^-1 b, both of the length of the rows worked on.
+  void solve(const Eigen::Ref<const SingleVector>& b, SingleVector& x) const;
 
  private:
-  using SmallBlock = Eigen::Matrix<float, 4, 4, Eigen::RowMajor>;
   void load(const BlockMatrix& matrix);
 
-  BlockMatrix work_;                 ///< the factors while they are made
-  std::vector<SmallBlock> factors_;  ///< unit L below, U above, inverse pivots on the diagonal
-  mutable Eigen::VectorXf solution_;
+  RowRange rows_;
+  BlockMatrix factors_;  ///< unit L below, U above, inverse pivots on the diagonal
 };
 
 }  // namespace falcate::solver

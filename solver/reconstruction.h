@@ -21,8 +21,8 @@ T limited_difference(const T& d1, const T& d2, double e) {
 }
 
 /// q + step, except that a fall of more than half of q levels off and never reaches zero:
-/// density and pressure stay positive, with a continuous derivative. It dies away as 1/step, so that
-/// no step is so large that the value vanishes in round-off.
+/// density and pressure stay positive, with a continuous derivative. It dies away as 1/step, so
+/// that no step is so large that the value vanishes in round-off.
 template <class T>
 T positive_step(const T& q, const T& step) {
   if (value_of(step) >= -0.5 * value_of(q)) return q + step;

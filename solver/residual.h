@@ -36,7 +36,7 @@ class Residual {
 
   /// One named term each.
   template <class T>
-  std::vector<Gradient<T>> gradients(std::span<const State<T>> cells) const;
+  void gradients(std::span<const State<T>> cells, std::vector<Gradient<T>>& out) const;
   template <class T>
   void interior_fluxes(std::span<const State<T>> cells, const std::vector<Gradient<T>>& gradients,
                        std::span<State<T>> fluxes) const;
@@ -48,6 +48,22 @@ class Residual {
                          std::span<State<T>> fluxes) const;
   template <class T>
   void plane_fluxes(std::span<const State<T>> cells, std::span<State<T>> fluxes) const;
+
+  /// Calls visit(plane, inflow) for each in- and outflow plane.
+  template <class Visit>
+  void for_each_plane(const Visit& visit) const {
+    for (const Plane& plane : problem_->inlet_planes) visit(plane, true);
+    for (const Plane& plane : problem_->outlet_planes) visit(plane, false);
+  }
+  /// Cell beside face i of a plane.
+  std::size_t cell_at(const Plane& plane, std::size_t i) const {
+    const auto face = static_cast<std::size_t>(plane.first_face) + i;
+    return static_cast<std::size_t>(mesh().faces()[face].left);
+  }
+  /// Fluxes through the faces of a plane, from the states of the cells beside them.
+  template <class T>
+  std::vector<State<T>> through_plane(const Plane& plane, bool inflow,
+                                      std::span<const State<T>> beside) const;
 
   /// State just inside a boundary face.
   template <class T>

@@ -1,12 +1,14 @@
 /// The terms of the residual (bodies of the templates in residual.h).
 #pragma once
+#include <algorithm>
+
 #include "solver/residual.h"
 
 namespace falcate::solver {
 
 template <class T>
-std::vector<Gradient<T>> Residual::gradients(std::span<const State<T>> cells) const {
-  std::vector<Gradient<T>> out(cells.size());
+void Residual::gradients(std::span<const State<T>> cells, std::vector<Gradient<T>>& out) const {
+  out.resize(cells.size());
 #pragma omp parallel for schedule(static)
   for (int i = 0; i < mesh().cell_count(); ++i) {
     const auto ui = static_cast<std::size_t>(i);
@@ -21,7 +23,6 @@ std::vector<Gradient<T>> Residual::gradients(std::span<const State<T>> cells) co
     }
     out[ui] = g;
   }
-  return out;
 }
 
 template <class T>
@@ -93,44 +94,37 @@ void Residual::prescribed_fluxes(std::span<const State<T>> cells,
   }
 }
 
-/// States of the cells along a plane, in the order of its faces.
 template <class T>
-std::vector<State<T>> adjoining(const mesh::PassageMesh& mesh, const Plane& plane,
-                                std::span<const State<T>> cells) {
-  std::vector<State<T>> out;
-  for (std::size_t i = 0; i < plane.waves.size(); ++i) {
-    const auto f = static_cast<std::size_t>(plane.first_face) + i;
-    out.push_back(cells[static_cast<std::size_t>(mesh.faces()[f].left)]);
+std::vector<State<T>> Residual::through_plane(const Plane& plane, bool inflow,
+                                              std::span<const State<T>> beside) const {
+  std::vector<State<T>> states(beside.size());
+  if (inflow)
+    inlet_states<T>(beside, problem_->inlet, plane.waves, states);
+  else
+    outlet_states<T>(beside, problem_->outlet, plane.waves, states);
+  for (std::size_t i = 0; i < states.size(); ++i) {
+    const auto& face = mesh().faces()[static_cast<std::size_t>(plane.first_face) + i];
+    states[i] = physical_flux(states[i], face.normal, problem_->gamma);
   }
-  return out;
+  return states;
 }
 
 template <class T>
 void Residual::plane_fluxes(std::span<const State<T>> cells, std::span<State<T>> fluxes) const {
-  const auto through = [&](const Plane& plane, const auto& states_of) {
-    const auto inside = adjoining(mesh(), plane, cells);
-    std::vector<State<T>> states(inside.size());
-    states_of(std::span<const State<T>>(inside), plane.waves, std::span<State<T>>(states));
-    for (std::size_t i = 0; i < states.size(); ++i) {
-      const auto f = static_cast<std::size_t>(plane.first_face) + i;
-      fluxes[f] = physical_flux(states[i], mesh().faces()[f].normal, problem_->gamma);
-    }
-  };
-  for (const Plane& plane : problem_->inlet_planes)
-    through(plane, [&](auto in, const auto& waves, auto out) {
-      inlet_states<T>(in, problem_->inlet, waves, out);
-    });
-  for (const Plane& plane : problem_->outlet_planes)
-    through(plane, [&](auto in, const auto& waves, auto out) {
-      outlet_states<T>(in, problem_->outlet, waves, out);
-    });
+  for_each_plane([&](const Plane& plane, bool inflow) {
+    std::vector<State<T>> beside;
+    for (std::size_t i = 0; i < plane.waves.size(); ++i) beside.push_back(cells[cell_at(plane, i)]);
+    const auto through = through_plane<T>(plane, inflow, beside);
+    std::copy(through.begin(), through.end(), fluxes.begin() + plane.first_face);
+  });
 }
 
 template <class T>
 void Residual::evaluate(std::span<const State<T>> cells, std::vector<State<T>>& fluxes,
                         std::span<State<T>> residual) const {
   fluxes.resize(static_cast<std::size_t>(mesh().face_count()));
-  const auto slopes = gradients(cells);
+  std::vector<Gradient<T>> slopes;
+  gradients(cells, slopes);
   interior_fluxes<T>(cells, slopes, fluxes);
   wall_fluxes<T>(cells, slopes, fluxes);
   prescribed_fluxes<T>(cells, slopes, fluxes);

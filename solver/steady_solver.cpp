@@ -5,13 +5,14 @@
 #include <cmath>
 
 #include "solver/gmres.h"
-#include "solver/incomplete_lu.h"
 #include "solver/jacobian.h"
+#include "solver/multigrid.h"
 
 namespace falcate::solver {
 namespace {
 
 using Cells = std::vector<State<double>>;
+using RowMajor = Eigen::Matrix<double, 4, 4, Eigen::RowMajor>;
 
 constexpr double least_cfl = 1e-2, greatest_cfl = 1e12;
 /// Planes follow the flow until the residual has fallen this far; then they stand still, so that
@@ -26,12 +27,19 @@ struct Manner {
 };
 constexpr Manner bold{0.3, 2.0}, cautious{0.4, 1.05};
 constexpr int bold_steps = 50;
+/// A bold march whose residual has fallen this far goes on beyond its steps.
+constexpr double way_under = 0.03;
 /// Of the averaging time asked for: an average over less says nothing.
 constexpr double least_time_averaged = 0.25;
 
 /// Of density and pressure, the gas at rest being 1: no cell falls below the first; changes of a
 /// cell below the second do not shorten a step; a step may bring a cell to twice its own and this.
 constexpr double all_but_empty = 1e-6, thin = 1e-2, much = 0.05;
+
+/// Each linear system is solved until |A dq + R| <= linear_tolerance |R|, or as far as the target
+/// needs.
+constexpr double linear_tolerance = 1e-2;
+constexpr int krylov_space = 60;
 
 double norm(const Cells& residual) {
   double sum = 0.0;
@@ -55,8 +63,9 @@ class March {
         options_(options),
         residual_(problem_, options.scheme),
         jacobian_(residual_),
-        rough_(jacobian_.matrix()),
-        preconditioner_(rough_, options.level_of_fill) {
+        rough_(jacobian_.compact_pattern()),
+        preconditioner_(rough_, {.level_of_fill = options.level_of_fill}),
+        gmres_(4 * static_cast<Eigen::Index>(residual_.mesh().cell_count()), krylov_space) {
     begin(problem, {}, bold);
     reference_ = size_;
   }
@@ -184,8 +193,9 @@ class March {
   }
 
   void linearise() {
-    jacobian_.assemble(cells_);
-    jacobian_.assemble_blend(options_.preconditioner_order, rough_);
+    jacobian_.linearise(cells_);
+    jacobian_.assemble_compact(rough_);
+    time_terms_.assign(cells_.size(), Eigen::Matrix4d::Zero());
     evaluations_ += 2;
   }
 
@@ -208,19 +218,35 @@ class March {
     for (int i = 0; i < rough_.rows(); ++i) {
       const auto ui = static_cast<std::size_t>(i);
       const auto m = conserved_by_primitive(cells_[ui], problem_.gamma);
-      const Block block = rates[ui] * Eigen::Map<const Block>(m.data());
-      jacobian_.matrix().block(jacobian_.matrix().diagonal(i)) += block;
-      rough_.block(rough_.diagonal(i)) += block;
+      const RowMajor term = rates[ui] * Eigen::Map<const RowMajor>(m.data());
+      time_terms_[ui] += term;
+      rough_.block(rough_.diagonal(i)) += term.cast<float>();
     }
+  }
+
+  /// y = (V M / dt + dR/dq) x
+  void multiply(const Vector& x, Vector& y) const {
+    jacobian_.multiply(x, y);
+    for (std::size_t i = 0; i < time_terms_.size(); ++i) {
+      const auto place = 4 * static_cast<Eigen::Index>(i);
+      y.segment<4>(place).noalias() += time_terms_[i] * x.segment<4>(place);
+    }
+  }
+
+  void precondition(const Vector& x, Vector& y) {
+    single_in_ = x.cast<float>();
+    preconditioner_.solve(single_in_, single_out_);
+    y = single_out_.cast<double>();
   }
 
   Vector solve_linear() {
     preconditioner_.factor(rough_);
     Vector change = Vector::Zero(4 * static_cast<Eigen::Index>(cells_.size()));
-    const double tolerance = std::clamp(0.1 * drop(), 1e-4, 1e-2);
-    linear_ = gmres([&](const Vector& x, Vector& y) { jacobian_.matrix().multiply(x, y); },
-                    [&](const Vector& x, Vector& y) { preconditioner_.solve(x, y); },
-                    -flattened(sums_), change, {tolerance, 120, 60});
+    const double enough = 0.3 * options_.residual_drop / drop();
+    const double tolerance = std::max(linear_tolerance, std::min(enough, 0.1));
+    linear_ = gmres_.solve([&](const Vector& x, Vector& y) { multiply(x, y); },
+                           [&](const Vector& x, Vector& y) { precondition(x, y); },
+                           -flattened(sums_), change, {tolerance, 120});
     krylov_ += linear_.iterations;
     evaluations_ += 2 * linear_.iterations;
     return change;
@@ -280,7 +306,10 @@ class March {
   Residual residual_;
   Jacobian jacobian_;
   BlockMatrix rough_;  ///< what the preconditioner factors
-  IncompleteLu preconditioner_;
+  Multigrid preconditioner_;
+  Gmres gmres_;
+  std::vector<Eigen::Matrix4d> time_terms_;  ///< V M / dt
+  SingleVector single_in_, single_out_;
   Cells cells_, sums_;
   std::vector<State<double>> fluxes_;
   GmresSummary linear_;
@@ -348,15 +377,18 @@ FlowSolution solve_steady(const FlowProblem& problem, const SteadyOptions& optio
   March march(problem, options);
   std::vector<ConvergencePoint> history;
   int step = 0;
-  const auto go_on = [&](const Manner& manner, int last_step) {
+  const auto go_on = [&](const Manner& manner, int patience) {
     march.begin(problem, start, manner);
-    while (!march.converged() && step < last_step && !march.exhausted()) {
+    const double under_way = way_under * march.drop();
+    const int first = step;
+    while (!march.converged() && step < options.max_steps && !march.exhausted() &&
+           (step < first + patience || march.drop() < under_way)) {
       history.push_back(march.step(++step));
       if (observer) observer(history.back());
     }
   };
-  go_on(bold, std::min(bold_steps, options.max_steps));
-  if (!march.converged() && step < options.max_steps) go_on(cautious, options.max_steps);
+  go_on(bold, bold_steps);
+  if (!march.converged()) go_on(cautious, options.max_steps);
   const bool steady = march.converged(), stuck = march.exhausted();
   TimeMean mean;
   const int half = options.averaging_steps / 2;
@@ -390,12 +422,32 @@ FlowSolution solve_steady(const FlowProblem& problem, const SteadyOptions& optio
   return solution;
 }
 
-std::vector<Primitive> prolong(const std::vector<Primitive>& coarse,
-                               const std::vector<int>& parent) {
-  std::vector<Primitive> fine;
-  fine.reserve(parent.size());
-  for (const int cell : parent) fine.push_back(coarse[static_cast<std::size_t>(cell)]);
-  return fine;
+std::vector<Primitive> prolong(const std::vector<Primitive>& cells, const mesh::PassageMesh& coarse,
+                               const mesh::PassageMesh& fine, const std::vector<int>& parent) {
+  if (cells.empty()) return {};
+  const GradientStencil stencil(coarse);
+  const auto carried = [&](int to) {
+    const int from = parent[static_cast<std::size_t>(to)];
+    const Primitive& own = cells[static_cast<std::size_t>(from)];
+    const mesh::Point way = fine.centroids()[static_cast<std::size_t>(to)] -
+                            coarse.centroids()[static_cast<std::size_t>(from)];
+    Primitive q = own;
+    for (const auto& neighbour : stencil.of(from)) {
+      const Primitive& other = cells[static_cast<std::size_t>(neighbour.cell)];
+      const double share = neighbour.weight.dot(way);
+      q.density += share * (other.density - own.density);
+      q.u += share * (other.u - own.u);
+      q.v += share * (other.v - own.v);
+      q.pressure += share * (other.pressure - own.pressure);
+    }
+    const bool mild = std::abs(q.density - own.density) <= 0.5 * own.density &&
+                      std::abs(q.pressure - own.pressure) <= 0.5 * own.pressure;
+    return mild ? q : own;
+  };
+  std::vector<Primitive> out;
+  out.reserve(parent.size());
+  for (int cell = 0; cell < fine.cell_count(); ++cell) out.push_back(carried(cell));
+  return out;
 }
 
 }  // namespace falcate::solver

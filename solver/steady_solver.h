@@ -1,12 +1,12 @@
 /// Steady flow of one passage by pseudo-transient Newton-Krylov with exact linearisation.
 ///
 /// Each step solves (V M / dt + dR/dq) dq = -R, M = dU/dq, dt = CFL V / sum of face wave speeds, by
-/// GMRES preconditioned with block ILU(k) of a matrix half-way to that of the first-order scheme
-/// (factors of the second-order one alone are unstable at low Mach number); CFL grows as the
-/// residual falls, so the last steps are Newton's own. Where no steady flow is found, the flow is
-/// marched in time by implicit Euler steps of one fiftieth of the passage time (plane to plane at
-/// the reference speed), shorter where a cell would change too much, first to forget its start, then
-/// to be averaged; the solution says so. Cells all but empty of gas stop neither way.
+/// GMRES preconditioned with a multigrid cycle on a compact matrix near that of the first-order
+/// scheme; the exact derivative is applied, never assembled. CFL grows as the residual falls, so
+/// the last steps are Newton's own. Where no steady flow is found, the flow is marched in time by
+/// implicit Euler steps of one fiftieth of the passage time (plane to plane at the reference
+/// speed), shorter where a cell would change too much, first to forget its start, then to be
+/// averaged; the solution says so. Cells all but empty of gas stop neither way.
 ///
 /// Sources: Kelley & Keyes, SIAM J. Numer. Anal. 35(2) (1998) 508-523 (pseudo-transient
 /// continuation); Knoll & Keyes, J. Comput. Phys. 193 (2004) 357-397.
@@ -26,8 +26,7 @@ struct SteadyOptions {
   int max_steps = 150;           ///< Newton steps, of both attempts together
   int averaging_steps = 160;     ///< time steps averaged where there is no steady flow; 0: none
   double initial_cfl = 10.0;
-  double preconditioner_order = 0.5;  ///< second-order part of the preconditioner's matrix, 0 to 1
-  int level_of_fill = 2;              ///< of the preconditioner
+  int level_of_fill = 1;  ///< of the preconditioner's smoother
   SchemeOptions scheme;
 };
 
@@ -38,8 +37,10 @@ using Observer = std::function<void(const ConvergencePoint&)>;
 FlowSolution solve_steady(const FlowProblem& problem, const SteadyOptions& options,
                           const std::vector<Primitive>& start, const Observer& observer = {});
 
-/// Cell states of a coarse level carried to the next finer one (injection through `parent`).
-std::vector<Primitive> prolong(const std::vector<Primitive>& coarse,
-                               const std::vector<int>& parent);
+/// Cell states of a coarse level carried to the next finer one: linear in each coarse cell, plain
+/// where that would change density or pressure by more than half. `parent` is the coarse cell of
+/// each fine one.
+std::vector<Primitive> prolong(const std::vector<Primitive>& cells, const mesh::PassageMesh& coarse,
+                               const mesh::PassageMesh& fine, const std::vector<int>& parent);
 
 }  // namespace falcate::solver

@@ -162,8 +162,10 @@ TEST(UniqueIncidence, TurnsTheStreamToTheStraightSuctionSide) {
     solver::FlowSolution solution;
     for (std::size_t k = 0; k < meshes.levels.size(); ++k) {
       problem.mesh = &meshes.levels[k];
-      solution = solver::solve_steady(
-          problem, {}, k == 0 ? solution.cells : solver::prolong(solution.cells, meshes.parent[k]));
+      solution = solver::solve_steady(problem, {},
+                                      k == 0 ? solution.cells
+                                             : solver::prolong(solution.cells, meshes.levels[k - 1],
+                                                               meshes.levels[k], meshes.parent[k]));
     }
     const auto f = post::passage_figures(problem, solution, {});
     const double nu = solver::prandtl_meyer(4.0, 1.4) + (25.0 - angle) * degree;

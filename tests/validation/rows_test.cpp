@@ -64,7 +64,9 @@ struct Passage {
         task(given) {
     for (std::size_t k = 0; k < meshes.levels.size(); ++k) {
       task.problem.mesh = &meshes.levels[k];
-      solve_from(k == 0 ? solution.cells : solver::prolong(solution.cells, meshes.parent[k]));
+      solve_from(k == 0 ? solution.cells
+                        : solver::prolong(solution.cells, meshes.levels[k - 1], meshes.levels[k],
+                                          meshes.parent[k]));
     }
   }
   void solve_from(const std::vector<solver::Primitive>& start,

@@ -49,8 +49,9 @@ inline BlockMatrix random_matrix(const Pattern& pattern, unsigned seed, double e
   std::uniform_real_distribution<double> part(-1.0, 1.0);
   BlockMatrix m(pattern);
   for (std::size_t k = 0; k < m.block_count(); ++k)
-    for (double& entry : m.block(k).reshaped()) entry = part(dice);
-  for (int row = 0; row < m.rows(); ++row) m.block(m.diagonal(row)) += extra * Block::Identity();
+    for (float& entry : m.block(k).reshaped()) entry = static_cast<float>(part(dice));
+  for (int row = 0; row < m.rows(); ++row)
+    m.block(m.diagonal(row)) += static_cast<float>(extra) * Block::Identity();
   return m;
 }
 
@@ -66,7 +67,7 @@ inline Eigen::MatrixXd dense(const BlockMatrix& m) {
   Eigen::MatrixXd out = Eigen::MatrixXd::Zero(4 * m.rows(), 4 * m.rows());
   for (int row = 0; row < m.rows(); ++row)
     for (std::size_t k = m.begin(row); k < m.end(row); ++k)
-      out.block<4, 4>(4 * row, 4 * m.column(k)) = m.block(k);
+      out.block<4, 4>(4 * row, 4 * m.column(k)) = m.block(k).cast<double>();
   return out;
 }
 

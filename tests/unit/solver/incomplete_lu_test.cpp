@@ -14,10 +14,10 @@ double distance(const BlockMatrix& m, int level) {
   IncompleteLu lu(m, level);
   lu.factor(m);
   const Vector b = random_vector(m, 3);
-  Vector x;
-  lu.solve(b, x);
+  SingleVector x;
+  lu.solve(b.cast<float>(), x);
   const Vector exact = dense(m).partialPivLu().solve(b);
-  return (x - exact).norm() / exact.norm();
+  return (x.cast<double>() - exact).norm() / exact.norm();
 }
 
 TEST(IncompleteLu, IsExactForABlockTridiagonalMatrix) {
@@ -59,9 +59,20 @@ TEST(IncompleteLu, FactorsAnewForNewEntries) {
   m = random_matrix(tridiagonal(12), 31, 6.0);
   lu.factor(m);
   const Vector b = random_vector(m, 3);
-  Vector x;
-  lu.solve(b, x);
-  EXPECT_LT((dense(m) * x - b).norm(), 1e-5 * b.norm());
+  SingleVector x;
+  lu.solve(b.cast<float>(), x);
+  EXPECT_LT((dense(m) * x.cast<double>() - b).norm(), 1e-5 * b.norm());
+}
+
+TEST(IncompleteLu, TakesAPartOfTheRowsAsAMatrixOfItsOwn) {
+  const auto m = random_matrix(tridiagonal(12), 2, 6.0);
+  IncompleteLu part(m, 0, {3, 8});
+  part.factor(m);
+  const Vector b = random_vector(m, 3).segment(12, 20);
+  SingleVector x;
+  part.solve(b.cast<float>(), x);
+  const Vector exact = dense(m).block(12, 12, 20, 20).partialPivLu().solve(b);
+  EXPECT_LT((x.cast<double>() - exact).norm(), 2e-6 * exact.norm());
 }
 
 TEST(IncompleteLu, ShowsASingularPivotAsNonFinite) {
@@ -69,8 +80,8 @@ TEST(IncompleteLu, ShowsASingularPivotAsNonFinite) {
   m.block(0) = Block::Identity();
   IncompleteLu lu(m, 0);
   lu.factor(m);
-  Vector x;
-  lu.solve(Vector::Ones(8), x);
+  SingleVector x;
+  lu.solve(SingleVector::Ones(8), x);
   EXPECT_TRUE(x.head<4>().allFinite());
   EXPECT_FALSE(x.tail<4>().allFinite());
 }

@@ -1,4 +1,4 @@
-// The assembled Jacobian against the residual's own derivative, taken by running the residual
+// Products of the Jacobian against the residual's own derivative, taken by running the residual
 // itself on dual numbers: two independent ways through the chain rule, equal to round-off.
 #include "solver/jacobian.h"
 
@@ -124,7 +124,7 @@ TEST_P(JacobianOf, EqualsTheDerivativeOfTheResidual) {
   refresh_planes(scaled, cells);
   const Residual residual(scaled, {GetParam().flux, 2.0});
   Jacobian jacobian(residual);
-  jacobian.assemble(cells);
+  jacobian.linearise(cells);
 
   std::mt19937 random(11);
   std::uniform_real_distribution<double> part(-1.0, 1.0);
@@ -138,12 +138,33 @@ TEST_P(JacobianOf, EqualsTheDerivativeOfTheResidual) {
     }
   residual.evaluate<Dual<1>>(dual, fluxes, sums);
   Vector product;
-  jacobian.matrix().multiply(direction, product);
+  jacobian.multiply(direction, product);
   for (std::size_t i = 0; i < cells.size(); ++i)
     for (std::size_t k = 0; k < 4; ++k)
       ASSERT_NEAR(product(static_cast<Eigen::Index>(4 * i + k)), sums[i][k].derivative[0],
                   1e-12 * product.lpNorm<Eigen::Infinity>())
           << "cell " << i << " equation " << k;
+}
+
+// y.(J x) = x.(J^T y) for all x and y: the definition of the transpose.
+TEST_P(JacobianOf, HasItsTranspose) {
+  const auto mesh = mesh_of(GetParam());
+  const auto problem = problem_of(GetParam(), mesh);
+  auto scaled = scale(problem);
+  const auto cells = stirred(problem, scaled);
+  refresh_planes(scaled, cells);
+  const Residual residual(scaled, {GetParam().flux, 2.0});
+  Jacobian jacobian(residual);
+  jacobian.linearise(cells);
+  std::srand(5);
+  for (int trial = 0; trial < 3; ++trial) {
+    const Vector x = Vector::Random(4 * static_cast<Eigen::Index>(cells.size()));
+    const Vector y = Vector::Random(x.size());
+    Vector forward, backward;
+    jacobian.multiply(x, forward);
+    jacobian.multiply_transposed(y, backward);
+    EXPECT_NEAR(y.dot(forward), x.dot(backward), 1e-12 * forward.norm() * y.norm());
+  }
 }
 
 INSTANTIATE_TEST_SUITE_P(Settings, JacobianOf, testing::ValuesIn(settings),

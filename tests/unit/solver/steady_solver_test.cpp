@@ -6,6 +6,7 @@
 #include <gtest/gtest.h>
 #include <omp.h>
 
+#include <algorithm>
 #include <cmath>
 #include <limits>
 #include <numbers>
@@ -238,14 +239,60 @@ TEST(SteadySolverWithoutState, RefusesAPrescribedPatch) {
   expect_refused(p, "a prescribed patch needs its state");
 }
 
-TEST(Prolong, GivesEachCellItsParentsState) {
-  const std::vector<Primitive> coarse = {{1, 2, 3, 4}, {5, 6, 7, 8}};
-  const auto fine = prolong(coarse, {1, 0, 1});
-  ASSERT_EQ(fine.size(), 3u);
-  EXPECT_EQ(fine[0].density, 5.0);
-  EXPECT_EQ(fine[1].u, 2.0);
-  EXPECT_EQ(fine[2].pressure, 8.0);
-  EXPECT_TRUE(prolong(coarse, {}).empty());
+mesh::PassageMesh square(int side) {
+  const auto kind = mesh::PatchKind::wall;
+  return mesh::PassageMesh::build(mesh::structured(
+      side, side, mesh::CellKind::quads, [](double x, double y) { return mesh::Point(x, y); },
+      {kind, kind, kind, kind}, 0.0, 0.0));
+}
+
+/// Coarse cell whose centroid is nearest.
+std::vector<int> parents(const mesh::PassageMesh& coarse, const mesh::PassageMesh& fine) {
+  std::vector<int> parent;
+  for (const auto& x : fine.centroids()) {
+    const auto nearer = [&](const mesh::Point& a, const mesh::Point& b) {
+      return (a - x).norm() < (b - x).norm();
+    };
+    const auto& c = coarse.centroids();
+    parent.push_back(static_cast<int>(std::min_element(c.begin(), c.end(), nearer) - c.begin()));
+  }
+  return parent;
+}
+
+TEST(Prolong, IsExactOnLinearFields) {
+  const auto coarse = square(4), fine = square(8);
+  const auto field = [](const mesh::Point& x) {
+    return Primitive{2.0 + 0.1 * x.x(), 3.0 - x.y(), x.x() + 2.0 * x.y(), 5.0 + 0.4 * x.y()};
+  };
+  std::vector<Primitive> cells;
+  for (const auto& x : coarse.centroids()) cells.push_back(field(x));
+  const auto carried = prolong(cells, coarse, fine, parents(coarse, fine));
+  ASSERT_EQ(carried.size(), 64u);
+  for (std::size_t i = 0; i < carried.size(); ++i) {
+    const Primitive exact = field(fine.centroids()[i]);
+    EXPECT_NEAR(carried[i].density, exact.density, 1e-13);
+    EXPECT_NEAR(carried[i].u, exact.u, 1e-13);
+    EXPECT_NEAR(carried[i].v, exact.v, 1e-13);
+    EXPECT_NEAR(carried[i].pressure, exact.pressure, 1e-13);
+  }
+}
+
+TEST(Prolong, KeepsTheParentsStateWhereTheSlopeIsSteep) {
+  const auto coarse = square(4), fine = square(8);
+  std::vector<Primitive> cells;
+  for (const auto& x : coarse.centroids())
+    cells.push_back({1.0, x.x(), 0.0, x.x() < 0.5 ? 1.0 : 40.0});
+  const auto parent = parents(coarse, fine);
+  const auto carried = prolong(cells, coarse, fine, parent);
+  for (std::size_t i = 0; i < carried.size(); ++i) {
+    const double own = cells[static_cast<std::size_t>(parent[i])].pressure;
+    EXPECT_LE(std::abs(carried[i].pressure - own), 0.5 * own);
+  }
+}
+
+TEST(Prolong, GivesNothingForNothing) {
+  const auto mesh = square(2);
+  EXPECT_TRUE(prolong({}, mesh, mesh, {0, 1, 2, 3}).empty());
 }
 
 }  // namespace
