@@ -28,14 +28,13 @@ SchwarzSmoother::SchwarzSmoother(const BlockMatrix& matrix, int level_of_fill, i
 
 void SchwarzSmoother::factor(const BlockMatrix& matrix) {
 #pragma omp parallel for schedule(static)
-  for (std::size_t k = 0; k < runs_.size(); ++k) runs_[k].factors.factor(matrix);
+  for (Run& run : runs_) run.factors.factor(matrix);
 }
 
 void SchwarzSmoother::solve(const SingleVector& b, SingleVector& x) const {
   x.resize(b.size());
 #pragma omp parallel for schedule(static)
-  for (std::size_t k = 0; k < runs_.size(); ++k) {
-    const Run& run = runs_[k];
+  for (const Run& run : runs_) {
     run.factors.solve(b.segment(4 * run.rows.first, 4 * run.rows.size()), run.solution);
     x.segment(4 * run.own.first, 4 * run.own.size()) =
         run.solution.segment(4 * (run.own.first - run.rows.first), 4 * run.own.size());
