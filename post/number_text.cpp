@@ -53,7 +53,7 @@ std::string whole_number_text(double value) {
 std::string number_with_error(double value, double error) {
   if (!std::isfinite(value)) return "n/a";
   if (!std::isfinite(error) || error <= 0.0) return number_text(value);
-  error = std::max(error, 1e-6 * std::abs(value));
+  error = std::max(error, 1e-4 * std::abs(value));
   int place = exponent_of(error) - 1;
   if (exponent_of(rounded_to_place(error, place)) > place + 1) ++place;
   if (place < -7 || exponent_of(std::max(error, std::abs(value))) >= 8) {

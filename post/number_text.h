@@ -12,8 +12,8 @@ std::string number_text(double value, int digits = 4);
 std::string whole_number_text(double value);
 
 /// "61.24 ± 0.38": the error with two significant digits, the value to the same place. An error
-/// below a millionth of the value counts as that; without a usable error (zero, not finite) the
-/// value alone, with four digits.
+/// below a ten-thousandth of the value counts as that; without a usable error (zero, not finite)
+/// the value alone, with four digits.
 std::string number_with_error(double value, double error);
 
 /// Step of a scale with about `count` steps over `range` > 0: 1, 2, 2.5 or 5 times a power of ten.

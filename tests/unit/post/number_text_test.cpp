@@ -25,7 +25,7 @@ TEST(NumberText, ValueEndsWhereItsErrorDoes) {
   EXPECT_EQ(number_with_error(61.2351, 0.0996), "61.24 ± 0.10");
   EXPECT_EQ(number_with_error(101322.0, 123.0), "101\u202f320 ± 120");
   EXPECT_EQ(number_with_error(-12.3, 4.5), "\u221212.3 ± 4.5");
-  EXPECT_EQ(number_with_error(1.0, 1e-13), "1.0000000 ± 0.0000010");
+  EXPECT_EQ(number_with_error(1.0, 1e-13), "1.00000 ± 0.00010");
   EXPECT_EQ(number_with_error(1.2345678, 0.0), "1.235");
   EXPECT_EQ(number_with_error(1.2345678, std::nan("")), "1.235");
   EXPECT_EQ(number_with_error(std::nan(""), 0.1), "n/a");
