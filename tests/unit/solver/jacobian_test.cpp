@@ -116,16 +116,30 @@ std::vector<State<double>> stirred(const FlowProblem& problem, const ScaledProbl
   return cells;
 }
 
-TEST_P(JacobianOf, EqualsTheDerivativeOfTheResidual) {
-  const auto mesh = mesh_of(GetParam());
-  const auto problem = problem_of(GetParam(), mesh);
-  auto scaled = scale(problem);
-  const auto cells = stirred(problem, scaled);
-  refresh_planes(scaled, cells);
-  const Residual residual(scaled, {GetParam().flux, 2.0});
-  Jacobian jacobian(residual);
-  jacobian.linearise(cells);
+/// The residual of a setting and its derivative at the stirred cells.
+struct Linearised {
+  mesh::PassageMesh mesh;
+  FlowProblem problem;
+  ScaledProblem scaled;
+  std::vector<State<double>> cells;
+  Residual residual;
+  Jacobian jacobian;
 
+  explicit Linearised(const Setting& s)
+      : mesh(mesh_of(s)),
+        problem(problem_of(s, mesh)),
+        scaled(scale(problem)),
+        cells(stirred(problem, scaled)),
+        residual(scaled, {s.flux, 2.0}),
+        jacobian(residual) {
+    refresh_planes(scaled, cells);
+    jacobian.linearise(cells);
+  }
+};
+
+TEST_P(JacobianOf, EqualsTheDerivativeOfTheResidual) {
+  const Linearised at(GetParam());
+  const auto& cells = at.cells;
   std::mt19937 random(11);
   std::uniform_real_distribution<double> part(-1.0, 1.0);
   std::vector<State<Dual<1>>> dual(cells.size()), fluxes, sums(cells.size());
@@ -136,9 +150,9 @@ TEST_P(JacobianOf, EqualsTheDerivativeOfTheResidual) {
       dual[i][k].derivative[0] = part(random);
       direction(static_cast<Eigen::Index>(4 * i + k)) = dual[i][k].derivative[0];
     }
-  residual.evaluate<Dual<1>>(dual, fluxes, sums);
+  at.residual.evaluate<Dual<1>>(dual, fluxes, sums);
   Vector product;
-  jacobian.multiply(direction, product);
+  at.jacobian.multiply(direction, product);
   for (std::size_t i = 0; i < cells.size(); ++i)
     for (std::size_t k = 0; k < 4; ++k)
       ASSERT_NEAR(product(static_cast<Eigen::Index>(4 * i + k)), sums[i][k].derivative[0],
@@ -148,21 +162,14 @@ TEST_P(JacobianOf, EqualsTheDerivativeOfTheResidual) {
 
 // y.(J x) = x.(J^T y) for all x and y: the definition of the transpose.
 TEST_P(JacobianOf, HasItsTranspose) {
-  const auto mesh = mesh_of(GetParam());
-  const auto problem = problem_of(GetParam(), mesh);
-  auto scaled = scale(problem);
-  const auto cells = stirred(problem, scaled);
-  refresh_planes(scaled, cells);
-  const Residual residual(scaled, {GetParam().flux, 2.0});
-  Jacobian jacobian(residual);
-  jacobian.linearise(cells);
+  const Linearised at(GetParam());
   std::srand(5);
   for (int trial = 0; trial < 3; ++trial) {
-    const Vector x = Vector::Random(4 * static_cast<Eigen::Index>(cells.size()));
+    const Vector x = Vector::Random(4 * static_cast<Eigen::Index>(at.cells.size()));
     const Vector y = Vector::Random(x.size());
     Vector forward, backward;
-    jacobian.multiply(x, forward);
-    jacobian.multiply_transposed(y, backward);
+    at.jacobian.multiply(x, forward);
+    at.jacobian.multiply_transposed(y, backward);
     EXPECT_NEAR(y.dot(forward), x.dot(backward), 1e-12 * forward.norm() * y.norm());
   }
 }
