@@ -50,6 +50,10 @@ double camber_angle(const mesh::BladeOutline& outline, double from, double to) {
 
 }  // namespace
 
+double throat_ratio(const BladeRow& row, double stream_angle) {
+  return row.throat / (row.pitch * std::sin(stream_angle));
+}
+
 double row_pitch(const Case& input) {
   return input.kind == CaseKind::rig ? input.row_pitch
                                      : std::numbers::pi * input.mean_diameter / input.blade_count;

@@ -18,6 +18,9 @@ struct BladeRow {
 
 BladeRow make_blade_row(const Case& input);
 
+/// Throat over the width of the stream that enters one passage at this angle.
+double throat_ratio(const BladeRow& row, double stream_angle);
+
 double row_pitch(const Case& input);
 double row_width(const Case& input);
 

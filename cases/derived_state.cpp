@@ -94,7 +94,7 @@ DerivedGroup row_group(const Case& input, const BladeRow& row) {
                 {"Blade exit angle", fmt::format("{:.2f} deg", degrees(row.exit_angle))},
                 {"Throat of the passage", mm(row.throat)},
                 {"Throat over inlet stream width",
-                 fmt::format("{:.3f}", row.throat / (row.pitch * std::sin(row.inlet_angle)))}};
+                 fmt::format("{:.3f}", throat_ratio(row, row.inlet_angle))}};
   if (input.kind == CaseKind::wheel) {
     const double arc =
         input.nozzle_count * input.nozzle_exit_diameter / std::sin(input.nozzle_angle);
@@ -146,7 +146,7 @@ void starting_caution(const Case& input, const BladeRow& row,
                       const std::vector<OperatingPoint>& points, DerivedState& state) {
   for (const OperatingPoint& point : points) {
     if (point.inlet_mach <= 1.0) continue;
-    const double area = row.throat / (row.pitch * std::sin(point.inlet.angle));
+    const double area = throat_ratio(row, point.inlet.angle);
     const double limit =
         solver::starting_area_ratio(point.inlet_mach, input.gas.heat_capacity_ratio);
     if (area >= limit) continue;

@@ -186,10 +186,9 @@ class PointSolver {
   }
 
   EntryFacts entry() const {
-    const double stream = row_pitch(case_) * std::sin(point_.inlet.angle);
     return {point_.inlet_mach,
             point_.inlet.angle,
-            make_blade_row(case_).throat / stream,
+            throat_ratio(make_blade_row(case_), point_.inlet.angle),
             case_.gas.heat_capacity_ratio,
             point_.exit_pressure,
             case_.kind == CaseKind::wheel};

@@ -48,55 +48,58 @@ Eigen::MatrixXf dense(const BlockMatrix& m) {
 }  // namespace
 
 std::vector<int> agglomerate(const BlockMatrix& pattern) {
-  std::vector<int> group(at(pattern.rows()), -1), size;
+  std::vector<int> group(at(pattern.rows()), -1);
+  int count = 0;
   for (int cell = 0; cell < pattern.rows(); ++cell) {
     if (group[at(cell)] >= 0) continue;
     std::vector<int> members;
-    const int name = static_cast<int>(size.size());
+    const int name = count++;
     for (int next = cell; next >= 0 && members.size() < group_size;
          next = best_linked(pattern, members, group)) {
       group[at(next)] = name;
       members.push_back(next);
     }
-    size.push_back(static_cast<int>(members.size()));
   }
   return group;
 }
 
-Multigrid::Multigrid(const BlockMatrix& finest, const MultigridOptions& options) {
+void Multigrid::add_level(const BlockMatrix& matrix) {
   levels_.push_back(std::make_unique<Level>(
-      Level{finest,
-            SchwarzSmoother(finest, options.level_of_fill, options.rows_a_run),
+      Level{matrix,
+            SchwarzSmoother(matrix, options_.level_of_fill, options_.rows_a_run),
             {},
             {},
             {},
             {},
             {},
             {}}));
+}
+
+Multigrid::Multigrid(const BlockMatrix& finest, const MultigridOptions& options)
+    : options_(options) {
+  add_level(finest);
   while (levels_.back()->matrix.rows() > options.coarsest) {
     Level& fine = *levels_.back();
     fine.group = agglomerate(fine.matrix);
-    BlockMatrix coarse = coarse_pattern(fine.matrix, fine.group);
-    if (coarse.rows() == fine.matrix.rows()) break;
+    auto coarse = std::make_unique<BlockMatrix>(coarse_pattern(fine.matrix, fine.group));
+    if (coarse->rows() == fine.matrix.rows()) break;
     for (int row = 0; row < fine.matrix.rows(); ++row)
       for (std::size_t k = fine.matrix.begin(row); k < fine.matrix.end(row); ++k)
         fine.target.push_back(
-            coarse.place(fine.group[at(row)], fine.group[at(fine.matrix.column(k))]));
-    SchwarzSmoother smoother(coarse, options.level_of_fill, options.rows_a_run);
-    levels_.push_back(std::make_unique<Level>(
-        Level{std::move(coarse), std::move(smoother), {}, {}, {}, {}, {}, {}}));
+            coarse->place(fine.group[at(row)], fine.group[at(fine.matrix.column(k))]));
+    coarse_.push_back(std::move(coarse));
+    add_level(*coarse_.back());
   }
 }
 
-void Multigrid::factor(const BlockMatrix& finest) {
-  levels_.front()->matrix = finest;
+void Multigrid::factor() {
   for (std::size_t i = 0; i + 1 < levels_.size(); ++i) {
-    const Level& fine = *levels_[i];
-    BlockMatrix& coarse = levels_[i + 1]->matrix;
+    Level& fine = *levels_[i];
+    BlockMatrix& coarse = *coarse_[i];
     coarse.set_zero();
     for (std::size_t k = 0; k < fine.target.size(); ++k)
       coarse.block(fine.target[k]) += fine.matrix.block(k);
-    levels_[i]->smoother.factor(fine.matrix);
+    fine.smoother.factor(fine.matrix);
   }
   direct_.compute(dense(levels_.back()->matrix));
 }

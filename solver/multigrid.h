@@ -25,21 +25,26 @@ std::vector<int> agglomerate(const BlockMatrix& pattern);
 
 class Multigrid {
  public:
+  /// Lays out the levels. The matrix is not copied: it must stay as long as this is used, with the
+  /// values that it had at the last factor().
   Multigrid(const BlockMatrix& finest, const MultigridOptions& options);
-  void factor(const BlockMatrix& finest);
+  void factor();
   /// x is about A^-1 b, for the matrix of the last factor().
   void solve(const SingleVector& b, SingleVector& x) const;
 
  private:
   struct Level {
-    BlockMatrix matrix;
+    const BlockMatrix& matrix;
     SchwarzSmoother smoother;
     std::vector<int> group;           ///< of each cell, on the next level
     std::vector<std::size_t> target;  ///< block of the next matrix each block adds to
     mutable SingleVector rhs, solution, rest, change;
   };
+  void add_level(const BlockMatrix& matrix);
   void cycle(std::size_t level) const;
 
+  MultigridOptions options_;
+  std::vector<std::unique_ptr<BlockMatrix>> coarse_;  ///< of the levels after the finest
   std::vector<std::unique_ptr<Level>> levels_;
   Eigen::PartialPivLU<Eigen::MatrixXf> direct_;
 };

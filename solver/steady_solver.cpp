@@ -240,7 +240,7 @@ class March {
   }
 
   Vector solve_linear() {
-    preconditioner_.factor(rough_);
+    preconditioner_.factor();
     Vector change = Vector::Zero(4 * static_cast<Eigen::Index>(cells_.size()));
     const double enough = 0.3 * options_.residual_drop / drop();
     const double tolerance = std::max(linear_tolerance, std::min(enough, 0.1));

@@ -53,8 +53,15 @@ void set_blade(cases::Case& input, const std::string& shape, double angle, doubl
   input.passage_width = std::min(open - 2.0 * *input.edge_radius, 0.5 * bend);
 }
 
-cases::Case common(const std::string& shape, double angle, double pitch, int cells) {
-  cases::Case input;
+MatrixRow common(cases::CaseKind kind, const std::string& name, const std::string& shape,
+                 double angle, double pitch_over_width, int cells) {
+  MatrixRow row;
+  row.name = name;
+  row.blade_angle_deg = angle;
+  row.pitch_over_width = pitch_over_width;
+  cases::Case& input = row.input;
+  input.kind = kind;
+  input.title = name;
   input.gas_name = "air";
   input.atmospheric_pressure = 101325.0;
   input.cells = cells;
@@ -62,8 +69,8 @@ cases::Case common(const std::string& shape, double angle, double pitch, int cel
   input.max_steps = 150;
   input.averaging_steps = 160;
   input.residual_drop = 1e-10;
-  set_blade(input, shape, angle, pitch);
-  return input;
+  set_blade(input, shape, angle * degree, pitch_over_width * width);
+  return row;
 }
 
 /// Supply pressure at which the jet, slowed by its coefficient, has the wanted Mach number.
@@ -76,15 +83,11 @@ double supply_pressure_for(double jet_mach, double coefficient, double exhaust) 
 
 MatrixRow wheel_row(const std::string& shape, double angle, double pitch_over_width,
                     double jet_mach, int cells) {
-  MatrixRow row;
-  row.name = fmt::format("wheel {} {:.0f} deg, pitch {:.2f} widths, jet Mach {:.1f}", shape, angle,
-                         pitch_over_width, jet_mach);
-  row.blade_angle_deg = angle;
-  row.pitch_over_width = pitch_over_width;
-  row.input = common(shape, angle * degree, pitch_over_width * width, cells);
+  MatrixRow row = common(cases::CaseKind::wheel,
+                         fmt::format("wheel {} {:.0f} deg, pitch {:.2f} widths, jet Mach {:.1f}",
+                                     shape, angle, pitch_over_width, jet_mach),
+                         shape, angle, pitch_over_width, cells);
   cases::Case& input = row.input;
-  input.kind = cases::CaseKind::wheel;
-  input.title = row.name;
   input.exhaust_pressure = 101325.0;
   input.supply_temperature = 293.15;
   input.velocity_coefficient = 0.97;
@@ -113,14 +116,11 @@ MatrixRow wheel_row(const std::string& shape, double angle, double pitch_over_wi
 /// next.
 MatrixRow rig_row(const std::string& shape, double angle, double pitch_over_width, std::size_t turn,
                   int cells) {
-  MatrixRow row;
-  row.name = fmt::format("rig {} {:.0f} deg, pitch {:.2f} widths", shape, angle, pitch_over_width);
-  row.blade_angle_deg = angle;
-  row.pitch_over_width = pitch_over_width;
-  row.input = common(shape, angle * degree, pitch_over_width * width, cells);
+  MatrixRow row =
+      common(cases::CaseKind::rig,
+             fmt::format("rig {} {:.0f} deg, pitch {:.2f} widths", shape, angle, pitch_over_width),
+             shape, angle, pitch_over_width, cells);
   cases::Case& input = row.input;
-  input.kind = cases::CaseKind::rig;
-  input.title = row.name;
   input.row_width = width;
   input.row_pitch = pitch_over_width * width;
   input.stream_total_pressure = 2e5;

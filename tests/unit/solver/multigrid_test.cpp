@@ -30,7 +30,7 @@ BlockMatrix transport(int side) {
 
 double reduction(const BlockMatrix& m, const MultigridOptions& options) {
   Multigrid multigrid(m, options);
-  multigrid.factor(m);
+  multigrid.factor();
   const SingleVector b = random_vector(m, 3).cast<float>();
   SingleVector x;
   multigrid.solve(b, x);
@@ -88,7 +88,7 @@ TEST(Multigrid, GivesTheSameBitsOnEveryNumberOfThreads) {
   for (const int threads : {1, 2}) {
     omp_set_num_threads(threads);
     Multigrid multigrid(m, {.rows_a_run = 200});
-    multigrid.factor(m);
+    multigrid.factor();
     multigrid.solve(b, x[static_cast<std::size_t>(threads - 1)]);
   }
   omp_set_num_threads(before);
