@@ -125,20 +125,20 @@ void jet_cautions(const Case& input, const post::NozzleFlow& jet, DerivedState& 
   if (input.nozzle_exit_diameter > input.blade_height)
     state.cautions.push_back(fmt::format(
         "Nozzle: its exit bore of {} is more than the blade height of {}, so that part of the jet "
-        "misses the blades",
+        "misses the blades.",
         mm(input.nozzle_exit_diameter), mm(input.blade_height)));
   if (jet.regime == post::NozzleRegime::shock_inside)
     state.cautions.push_back(
         "Nozzle: a shock stands in its divergent part, and the jet is slower than computed here; "
-        "make the exit narrower");
+        "make the exit narrower.");
   if (input.rim == "open")
     state.cautions.push_back(
         "Open rim: gas that spills over the tips is not counted in this version; the figures are "
-        "those of a closed passage, which an open wheel does not reach");
+        "those of a closed passage, which an open wheel does not reach.");
   if (input.friction)
     state.cautions.push_back(
         "Friction: asked for, but not counted in this version; efficiency and speed are those of "
-        "a frictionless passage");
+        "a frictionless passage.");
 }
 
 /// Kantrowitz limit: a passage narrower than it holds a shock ahead of it and spills.
@@ -152,7 +152,7 @@ void starting_caution(const Case& input, const BladeRow& row,
     if (area >= limit) continue;
     state.cautions.push_back(fmt::format(
         "{}: throat over inlet stream width is {:.3f}, below the starting limit of {:.3f} at Mach "
-        "{:.2f}; {}; a shock may stand ahead of the blades and gas spill past them",
+        "{:.2f}; {}; a shock may stand ahead of the blades and gas spill past them.",
         points.size() == 1 ? "Passage" : "Passage at " + point.id, area, limit, point.inlet_mach,
         starting_words(area, input.gas.heat_capacity_ratio)));
   }
@@ -203,7 +203,7 @@ DerivedState derived_state(const Case& input, const BladeRow& row,
   if (input.kind == CaseKind::rig) {
     state.groups = {stream_group(input), row_group(input, row)};
     if (input.friction)
-      state.cautions.push_back("Friction: asked for, but not counted in this version");
+      state.cautions.push_back("Friction: asked for, but not counted in this version.");
     starting_caution(input, row, points, state);
     return state;
   }

@@ -180,25 +180,23 @@ ScaledProblem scale(const FlowProblem& problem) {
   return s;
 }
 
-void refresh_planes(ScaledProblem& problem, std::span<const State<double>> cells) {
+void refresh_planes(ScaledProblem& problem, std::span<const State<double>> cells, double share) {
   const double gamma = problem.gamma;
-  for (const Plane& plane : problem.inlet_planes) {
+  const auto follow = [share](double& mean, double now) { mean += share * (now - mean); };
+  const auto follow_stream = [&](auto& stream, const Plane& plane) {
     const auto q = plane_mean(*problem.mesh, plane, cells);
     const double a = speed_of_sound(q, gamma);
-    problem.inlet.u = q[velocity_x] / a;
-    problem.inlet.v = q[velocity_y] / a;
-    problem.inlet.impedance = q[density] * a;
-    const double m2 = (q[velocity_x] * q[velocity_x] + q[velocity_y] * q[velocity_y]) / (a * a);
-    problem.inlet.beta = std::sqrt(std::max(1.0 - m2, 0.0));
+    follow(stream.u, q[velocity_x] / a);
+    follow(stream.v, q[velocity_y] / a);
+    follow(stream.impedance, q[density] * a);
+    return (q[velocity_x] * q[velocity_x] + q[velocity_y] * q[velocity_y]) / (a * a);
+  };
+  for (const Plane& plane : problem.inlet_planes) {
+    const double mach_squared = follow_stream(problem.inlet, plane);
+    follow(problem.inlet.beta, std::sqrt(std::max(1.0 - mach_squared, 0.0)));
   }
   for (const Plane& plane : problem.outlet_planes) {
-    const auto q = plane_mean(*problem.mesh, plane, cells);
-    const double a = speed_of_sound(q, gamma);
-    problem.outlet.u = q[velocity_x] / a;
-    problem.outlet.v = q[velocity_y] / a;
-    problem.outlet.impedance = q[density] * a;
-    problem.outlet.mach_squared =
-        (q[velocity_x] * q[velocity_x] + q[velocity_y] * q[velocity_y]) / (a * a);
+    follow(problem.outlet.mach_squared, follow_stream(problem.outlet, plane));
     problem.outlet.axially_supersonic = problem.outlet.u > 1.0;
   }
 }

@@ -48,8 +48,10 @@ struct ScaledProblem {
 /// Throws std::invalid_argument when the problem is not one (programmer's error).
 ScaledProblem scale(const FlowProblem& problem);
 
-/// Takes the mean states on the planes, about which waves are told apart, from the flow itself.
-void refresh_planes(ScaledProblem& problem, std::span<const State<double>> cells);
+/// Takes the mean states on the planes, about which waves are told apart, from the flow itself:
+/// a share of the way from those before, so that they follow an unsteady flow slowly.
+void refresh_planes(ScaledProblem& problem, std::span<const State<double>> cells,
+                    double share = 1.0);
 
 /// A first guess of the flow: isentropic, turned by the blades' mean direction.
 std::vector<State<double>> cold_start(const FlowProblem& problem, const ScaledProblem& scaled);
