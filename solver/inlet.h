@@ -8,6 +8,11 @@
 ///   stream the set angle.
 /// - supersonic with subsonic axial part: |theta| + nu(M), theta from axial, comes in with the
 ///   stream; |theta| - nu(M) leaves with the waves of the blades (unique incidence stays free).
+///   The shocks among these waves go on ahead of the plane and take total pressure from the gas
+///   there, in all the energy of the waves, of second order in their strength. What passes the
+///   plane is the same anywhere ahead: so the uniform stream with the same mass, momentum and
+///   energy flow (mixed_out.h) has the set |theta| + nu and total pressure, and the values at the
+///   faces, alike for all, are such that it has.
 /// - axial part supersonic: the full given state.
 /// Inside units of the solver: total density and pressure 1.
 /// Sources: Giles, AIAA J. 28(12) (1990) 2050-2058; Saxer & Giles, J. Propulsion 9(2) (1993)
@@ -18,6 +23,7 @@
 #include <vector>
 
 #include "solver/gas_dynamics.h"
+#include "solver/mixed_out.h"
 #include "solver/plane_waves.h"
 #include "solver/prandtl_meyer.h"
 #include "solver/state.h"
@@ -52,20 +58,86 @@ State<T> from_invariant(const T& j, const T& v, double gamma) {
   return {rho, j + k * a, v, rho * a * a / gamma};
 }
 
+/// The sign that makes the set stream's angle from axial positive.
+inline double side_of(const InletStream& s) { return s.cotangent < 0.0 ? -1.0 : 1.0; }
+
+/// |theta| - nu of a cell, which leaves.
 template <class T>
-State<T> simple_wave_state(const State<T>& cell, const InletStream& s) {
+T outgoing_invariant(const State<T>& cell, const InletStream& s) {
   using std::atan2;
+  const T a = speed_of_sound(cell, s.gamma);
+  const T m2 = (cell[1] * cell[1] + cell[2] * cell[2]) / (a * a);
+  return side_of(s) * atan2(cell[2], cell[1]) - prandtl_meyer(m2, s.gamma);
+}
+
+/// State at total density and pressure 1 where the waves of both families meet.
+template <class T>
+State<T> simple_wave_state(const T& incoming, const T& outgoing, const InletStream& s) {
   using std::cos;
   using std::sin;
-  const double g = s.gamma, side = s.cotangent < 0.0 ? -1.0 : 1.0;
-  const T a = speed_of_sound(cell, g);
-  const T m2 = (cell[1] * cell[1] + cell[2] * cell[2]) / (a * a);
-  const T theta = side * atan2(cell[2], cell[1]);
-  const T outgoing = theta - prandtl_meyer(m2, g);
-  const T nu = larger(T(0.5 * (s.simple_wave - outgoing)), T(1e-6));
-  const T turned = 0.5 * (s.simple_wave + outgoing);
-  const auto in = unit_stream(mach_squared_from_prandtl_meyer(nu, g), g);
-  return {in.density, in.speed * cos(turned), side * in.speed * sin(turned), in.pressure};
+  const T nu = larger(T(0.5 * (incoming - outgoing)), T(1e-6));
+  const T turned = 0.5 * (incoming + outgoing);
+  const auto in = unit_stream(mach_squared_from_prandtl_meyer(nu, s.gamma), s.gamma);
+  return {in.density, in.speed * cos(turned), side_of(s) * in.speed * sin(turned), in.pressure};
+}
+
+/// What the uniform stream with the same fluxes has.
+template <class T>
+struct MixedStream {
+  T incoming, total_pressure;
+};
+
+template <class T>
+MixedStream<T> mixed_stream(std::span<const T> outgoing, const T& incoming, const InletStream& s,
+                            const PlaneWaves& waves) {
+  using std::atan2;
+  using std::pow;
+  State<T> sum{T(0.0), T(0.0), T(0.0), T(0.0)};
+  for (std::size_t i = 0; i < outgoing.size(); ++i) {
+    const auto f =
+        physical_flux(simple_wave_state(incoming, outgoing[i], s), mesh::Point(1.0, 0.0), s.gamma);
+    for (std::size_t k = 0; k < 4; ++k) sum[k] += waves.weight(i) * f[k];
+  }
+  const State<T> q = mixed_out_state(sum, s.gamma, Branch::subsonic);
+  const T a = speed_of_sound(q, s.gamma);
+  const T m2 = (q[1] * q[1] + q[2] * q[2]) / (a * a);
+  const double h = s.gamma / (s.gamma - 1.0);
+  return {side_of(s) * atan2(q[2], q[1]) + prandtl_meyer(m2, s.gamma),
+          q[pressure] * pow(T(1.0 + 0.5 * (s.gamma - 1.0) * m2), h)};
+}
+
+/// The |theta| + nu at the faces for which the uniform stream has the set one; by Newton's method
+/// on values, with a last step on T, which carries exact derivatives.
+template <class T>
+T incoming_level(std::span<const T> outgoing, const InletStream& s, const PlaneWaves& waves) {
+  constexpr double near = 1e-7, far = 0.2;
+  std::vector<Dual<1>> values;
+  for (const T& leaving : outgoing) values.emplace_back(value_of(leaving));
+  double level = s.simple_wave, slope = 1.0, change = far;
+  for (int step = 0; step < 20 && std::abs(change) > near; ++step) {
+    const auto now = mixed_stream<Dual<1>>(values, Dual<1>::seeded(level, 0), s, waves).incoming;
+    slope = std::clamp(now.derivative[0], 0.3, 3.0);
+    change = (now.value - s.simple_wave) / slope;
+    level -= change;
+  }
+  // Waves too strong for any such level: the set one serves.
+  if (!(std::abs(change) <= near) || std::abs(level - s.simple_wave) > far) return T(s.simple_wave);
+  return T(level) -
+         (mixed_stream<T>(outgoing, T(level), s, waves).incoming - s.simple_wave) / slope;
+}
+
+template <class T>
+void simple_wave(std::span<const State<T>> cells, const InletStream& s, const PlaneWaves& waves,
+                 std::span<State<T>> boundary) {
+  std::vector<T> outgoing;
+  for (const State<T>& cell : cells) outgoing.push_back(outgoing_invariant(cell, s));
+  const T incoming = incoming_level<T>(outgoing, s, waves);
+  const T gain = mixed_stream<T>(outgoing, incoming, s, waves).total_pressure;
+  for (std::size_t i = 0; i < cells.size(); ++i) {
+    boundary[i] = simple_wave_state(incoming, outgoing[i], s);
+    boundary[i][density] = boundary[i][density] / gain;
+    boundary[i][pressure] = boundary[i][pressure] / gain;
+  }
 }
 
 /// Momentum error of the set angle: sum of weight * rho u (v - u cot) over the plane.
@@ -127,13 +199,10 @@ template <class T>
 void inlet_states(std::span<const State<T>> cells, const InletStream& s, const PlaneWaves& waves,
                   std::span<State<T>> boundary) {
   if (s.regime == InletRegime::subsonic) return inlet_detail::subsonic(cells, s, waves, boundary);
-  for (std::size_t i = 0; i < cells.size(); ++i) {
-    if (s.regime == InletRegime::simple_wave) {
-      boundary[i] = inlet_detail::simple_wave_state(cells[i], s);
-    } else {
-      for (std::size_t k = 0; k < 4; ++k) boundary[i][k] = T(s.given[k]);
-    }
-  }
+  if (s.regime == InletRegime::simple_wave)
+    return inlet_detail::simple_wave(cells, s, waves, boundary);
+  for (State<T>& face : boundary)
+    for (std::size_t k = 0; k < 4; ++k) face[k] = T(s.given[k]);
 }
 
 }  // namespace falcate::solver
