@@ -57,7 +57,8 @@ TEST_P(Pages, links_lead_to_files_of_the_repository) {
 
 INSTANTIATE_TEST_SUITE_P(All, Pages,
                          ::testing::Values("README.md", "DEVELOPERS.md", "docs/method.md",
-                                           "docs/decisions.md", "docs/case-file.md"),
+                                           "docs/decisions.md", "docs/case-file.md",
+                                           "docs/validation.md"),
                          [](const auto& info) {
                            return std::regex_replace(std::string(info.param), std::regex("\\W"),
                                                      "_");
