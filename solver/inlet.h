@@ -35,9 +35,10 @@ enum class InletRegime { subsonic, simple_wave, axially_supersonic };
 struct InletStream {
   double gamma = 1.4;
   InletRegime regime = InletRegime::subsonic;
-  double cotangent = 0.0;    ///< of the set angle: v / u
-  double simple_wave = 0.0;  ///< |theta| + nu, rad
-  State<double> given{};     ///< full state, where one is given
+  double cotangent = 0.0;          ///< of the set angle: v / u
+  double simple_wave = 0.0;        ///< |theta| + nu, rad
+  double least_outgoing = -1e300;  ///< |theta| - nu where the axial part of the wave is sonic
+  State<double> given{};           ///< full state, where one is given
   /// Mean state about which waves are taken apart: u, v in units of a; rho a; sqrt(1 - M^2).
   double u = 0.0, v = 0.0, impedance = 1.0, beta = 1.0;
 };
@@ -61,13 +62,15 @@ State<T> from_invariant(const T& j, const T& v, double gamma) {
 /// The sign that makes the set stream's angle from axial positive.
 inline double side_of(const InletStream& s) { return s.cotangent < 0.0 ? -1.0 : 1.0; }
 
-/// |theta| - nu of a cell, which leaves.
+/// |theta| - nu of a cell, which leaves. Nothing leaves a stream whose axial part is supersonic: it
+/// is held at sonic, where a passing first guess is caught.
 template <class T>
 T outgoing_invariant(const State<T>& cell, const InletStream& s) {
   using std::atan2;
   const T a = speed_of_sound(cell, s.gamma);
   const T m2 = (cell[1] * cell[1] + cell[2] * cell[2]) / (a * a);
-  return side_of(s) * atan2(cell[2], cell[1]) - prandtl_meyer(m2, s.gamma);
+  const T leaving = side_of(s) * atan2(cell[2], cell[1]) - prandtl_meyer(m2, s.gamma);
+  return larger(leaving, T(s.least_outgoing));
 }
 
 /// State at total density and pressure 1 where the waves of both families meet.

@@ -6,7 +6,8 @@
 ///   c4 = (2u/(beta - v)) c2 - ((beta + v)/(beta - v)) c3      (u, v in units of a),
 ///   beta = i sgn(l) sqrt(1 - M^2) below, -sgn(v) sqrt(M^2 - 1) above Mach 1.
 /// The level P is such that the uniform stream with the same mass, momentum and energy flow has the
-/// set pressure. Where the axial part is supersonic everything leaves: the cell's state.
+/// set pressure. Where the axial part of the mean stream is supersonic and the set pressure below
+/// that behind a shock along the plane, everything leaves: the cell's state.
 /// Where a vortex draws gas back in through the plane, that gas comes from rest behind the row: its
 /// total pressure is P (1 + ...) and its total enthalpy that of the supply, so that no energy
 /// enters which the stream did not bring. Source: Giles, AIAA J. 28(12) (1990) 2050-2058.
@@ -28,6 +29,7 @@ struct OutletStream {
   double pressure = 1.0;  ///< set, mixed out
   /// Mean state: u, v in units of a; rho a; M^2.
   double u = 0.0, v = 0.0, impedance = 1.0, mach_squared = 0.0;
+  double pressure_behind_shock = 0.0;  ///< along the plane, in a mean stream axially supersonic
 };
 
 namespace outlet_detail {

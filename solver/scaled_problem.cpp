@@ -43,6 +43,17 @@ std::vector<Plane> planes_of(const mesh::PassageMesh& mesh, PatchKind kind) {
   return planes;
 }
 
+/// |theta| - nu where the axial part of a simple wave is just sonic: M cos(theta) = 1.
+double sonic_outgoing(double incoming, double gamma) {
+  double low = std::max(0.0, incoming - std::acos(0.0)), high = incoming;
+  for (int i = 0; i < 60; ++i) {
+    const double nu = 0.5 * (low + high);
+    const double mach = std::sqrt(mach_squared_from_prandtl_meyer(std::max(nu, 1e-9), gamma));
+    (mach * std::cos(incoming - nu) < 1.0 ? low : high) = nu;
+  }
+  return incoming - low - high;
+}
+
 InletStream inlet_stream(const FlowProblem& problem) {
   const double gamma = problem.gas.heat_capacity_ratio;
   const auto& in = problem.inlet;
@@ -58,6 +69,7 @@ InletStream inlet_stream(const FlowProblem& problem) {
   } else if (mach > 1.0) {
     s.regime = InletRegime::simple_wave;
     s.simple_wave = std::abs(std::acos(0.0) - in.angle) + prandtl_meyer(mach * mach, gamma);
+    s.least_outgoing = sonic_outgoing(s.simple_wave, gamma);
   }
   return s;
 }
@@ -72,6 +84,28 @@ State<double> plane_mean(const mesh::PassageMesh& mesh, const Plane& plane,
     for (std::size_t k = 0; k < 4; ++k) mean[k] += plane.waves.weight(i) * q[k];
   }
   return mean;
+}
+
+/// Mean fluxes of the adjoining cells over a plane.
+State<double> plane_fluxes(const mesh::PassageMesh& mesh, const Plane& plane,
+                           std::span<const State<double>> cells, double gamma) {
+  State<double> mean{};
+  for (std::size_t i = 0; i < plane.waves.size(); ++i) {
+    const auto f = static_cast<std::size_t>(plane.first_face) + i;
+    const auto& q = cells[static_cast<std::size_t>(mesh.faces()[f].left)];
+    const auto flux = physical_flux(q, mesh::Point(1.0, 0.0), gamma);
+    for (std::size_t k = 0; k < 4; ++k) mean[k] += plane.waves.weight(i) * flux[k];
+  }
+  return mean;
+}
+
+/// Pressure of the uniform stream with these fluxes behind a shock along the plane; nought where
+/// no stream carries them. The two streams that carry the same fluxes, on either side of sonic, are
+/// the two sides of such a shock.
+double pressure_behind_shock(const State<double>& fluxes, double gamma) {
+  if (!(fluxes[density] > 0.0) || mixed_out_equation(fluxes, gamma).discriminant() <= 0.0)
+    return 0.0;
+  return mixed_out_state(fluxes, gamma, Branch::subsonic)[pressure];
 }
 
 /// Direction of the blades at axial stations between the edges, from the walls' tangents.
@@ -197,7 +231,11 @@ void refresh_planes(ScaledProblem& problem, std::span<const State<double>> cells
   }
   for (const Plane& plane : problem.outlet_planes) {
     follow(problem.outlet.mach_squared, follow_stream(problem.outlet, plane));
-    problem.outlet.axially_supersonic = problem.outlet.u > 1.0;
+    const auto fluxes = plane_fluxes(*problem.mesh, plane, cells, gamma);
+    follow(problem.outlet.pressure_behind_shock, pressure_behind_shock(fluxes, gamma));
+    // A set pressure above it drives the shock into the row, one below it sweeps it away.
+    problem.outlet.axially_supersonic =
+        problem.outlet.u > 1.0 && problem.outlet.pressure < problem.outlet.pressure_behind_shock;
   }
 }
 

@@ -233,6 +233,75 @@ TEST_P(Planes, ChangeNothingWhereTheyMoveOut) {
 INSTANTIATE_TEST_SUITE_P(Rows, Planes, testing::ValuesIn(rows),
                          [](const auto& info) { return std::string(info.param.name); });
 
+/// Figures of a row of this outline, solved coarse to fine.
+post::PassageFigures solved(const mesh::BladeOutline& outline, double pitch, double blade_angle,
+                            const solver::InletCondition& inlet, double exit_pressure, int cells) {
+  mesh::MeshOptions options;
+  options.cells = cells;
+  const auto meshes =
+      mesh::make_mesh_levels(outline, pitch, blade_angle, std::numbers::pi - blade_angle, options);
+  solver::FlowProblem problem;
+  problem.inlet = inlet;
+  problem.exit_pressure = exit_pressure;
+  solver::FlowSolution solution;
+  for (std::size_t k = 0; k < meshes.levels.size(); ++k) {
+    problem.mesh = &meshes.levels[k];
+    solution = solver::solve_steady(problem, {},
+                                    k == 0 ? solution.cells
+                                           : solver::prolong(solution.cells, meshes.levels[k - 1],
+                                                             meshes.levels[k], meshes.parent[k]));
+  }
+  EXPECT_EQ(solution.summary.status, solver::SolutionStatus::steady);
+  return post::passage_figures(problem, solution, {});
+}
+
+double axial_mach(const post::StreamState& stream) {
+  return stream.mach * std::sin(stream.angle_deg * degree);
+}
+
+// A stream that expands past the set pressure on its way through the first guess meets a shock that
+// this pressure drives back into the row: the set pressure holds.
+TEST(ExitPressure, HoldsWhereAShockWouldRunIntoTheRow) {
+  mesh::CupParameters cup;
+  cup.width = width;
+  cup.pitch = 0.8 * width;
+  cup.inlet_angle = 35.0 * degree;
+  cup.exit_angle = 145.0 * degree;
+  cup.wall_thickness = 0.06 * width;
+  const double set = 1e6 * solver::pressure_ratio(1.71, 1.4);
+  const auto f = solved(mesh::cup_blade(cup), cup.pitch, cup.inlet_angle,
+                        {1e6, 300.0, 24.8 * degree, 1.71}, set, 2000);
+  EXPECT_NEAR(f.exit.pressure_pa / set, 1.0, 1e-9);
+  EXPECT_LT(axial_mach(f.exit), 1.0);
+  EXPECT_GT(f.exit.mach, 1.0);
+}
+
+// Limit load: at and below a pressure the row behaves alike, whatever is set; a shock along the
+// plane marks where pressure acts again (NACA Report 1135 (1953), eq. 93).
+TEST(ExitPressure, ActsOnlyAboveThatBehindAShockAtLimitLoad) {
+  mesh::ChannelParameters blade;
+  blade.width = width;
+  blade.pitch = 0.5 * width;
+  blade.inlet_angle = 30.0 * degree;
+  blade.exit_angle = 150.0 * degree;
+  blade.edge_radius = 0.01 * width;
+  const double ideal = 1e6 * solver::pressure_ratio(2.0, 1.4);
+  const auto at_pressure = [&](double level) {
+    return solved(mesh::channel_blade(blade), blade.pitch, blade.inlet_angle,
+                  {1e6, 300.0, blade.inlet_angle, 2.0}, level * ideal, 8000);
+  };
+  const auto high = at_pressure(1.0), low = at_pressure(0.6), raised = at_pressure(1.4);
+  const double axial = axial_mach(high.exit);
+  EXPECT_GT(axial, 1.0);
+  EXPECT_NEAR(low.exit.pressure_pa / high.exit.pressure_pa, 1.0, 1e-8);
+  EXPECT_NEAR(low.tangential_force_n_m / high.tangential_force_n_m, 1.0, 1e-8);
+  const double behind = high.exit.pressure_pa * (1.0 + 2.8 / 2.4 * (axial * axial - 1.0));
+  EXPECT_GT(behind, ideal);
+  EXPECT_LT(behind, 1.4 * ideal);
+  EXPECT_NEAR(raised.exit.pressure_pa / (1.4 * ideal), 1.0, 1e-9);
+  EXPECT_LT(axial_mach(raised.exit), 1.0);
+}
+
 // The suction side of S1 runs straight at 25 degrees up to its leading edge: whatever the stream
 // far ahead, it enters along that side, turned by waves that keep |theta| + nu(M) (theta from the
 // axial direction). Source: NACA Report 1135 (1953); Starken, Zhong & Schreiber, ASME 84-GT (1984).

@@ -75,12 +75,18 @@ TEST(FlowRemarks, TellOfAPassageThatDoesNotStart) {
 
 TEST(FlowRemarks, TellOfAnExitPressureThatIsMissed) {
   auto figures = quiet();
-  figures.exit = {90.0, 1.05, 350.0, 0.74394e5, 1.5e5, 300.0};
+  // Pressure behind a shock at Mach 1.2 over that ahead of it: 1.513 (NACA Report 1135, table II).
+  figures.exit = {90.0, 1.2, 350.0, 0.74394e5, 1.5e5, 300.0};
   EXPECT_THAT(
       flow_remarks(entry(0.5, 1.0), figures, false),
-      ElementsAre("The row is at its limit load: the gas leaves at axial Mach 1.05, so that "
-                  "the pressure behind it no longer acts on it; the mixed-out exit pressure "
-                  "is 0.7439 bar(a), not the 1.0000 bar(a) set."));
+      ElementsAre("The row is at its limit load: the gas leaves at axial Mach 1.20, so that "
+                  "a pressure behind it below 1.1258 bar(a) does not act on it; the mixed-out "
+                  "exit pressure is 0.7439 bar(a), not the 1.0000 bar(a) set."));
+  // More than the shock can hold off: no limit load.
+  figures.exit = {90.0, 1.1, 350.0, 0.74394e5, 1.5e5, 300.0};
+  EXPECT_THAT(flow_remarks(entry(0.5, 1.0), figures, false),
+              ElementsAre("The exit pressure is missed: the mixed-out exit pressure is 0.7439 "
+                          "bar(a), not the 1.0000 bar(a) set."));
   figures.exit = {150.0, 0.8, 250.0, 1.02e5, 1.5e5, 300.0};
   EXPECT_THAT(flow_remarks(entry(0.5, 1.0), figures, false),
               ElementsAre("The exit pressure is missed: the mixed-out exit pressure is 1.0200 "

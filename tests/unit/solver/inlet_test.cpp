@@ -8,6 +8,9 @@
 #include <cmath>
 #include <numbers>
 
+#include "mesh/structured.h"
+#include "solver/scaled_problem.h"
+
 namespace falcate::solver {
 namespace {
 
@@ -119,6 +122,30 @@ TEST_P(InletWithWaves, HasExactDerivatives) {
   for (std::size_t i = 0; i < cells.size(); ++i)
     for (std::size_t k = 0; k < 4; ++k)
       EXPECT_NEAR(boundary[i][k].derivative[0], (up[i][k] - down[i][k]) / (2.0 * h), 2e-8);
+}
+
+// A first guess may run away to axially supersonic inflow, out of which no wave would lead back.
+TEST_P(InletWithWaves, IsAtMostAxiallySonic) {
+  mesh::PassageMesh mesh = mesh::PassageMesh::build(mesh::structured(
+      2, 4, mesh::CellKind::quads,
+      [](double xi, double eta) { return mesh::Point(xi, pitch * eta); },
+      {mesh::PatchKind::wall, mesh::PatchKind::outlet, mesh::PatchKind::wall,
+       mesh::PatchKind::inlet},
+      pitch));
+  FlowProblem problem;
+  problem.mesh = &mesh;
+  problem.inlet = {1e5, 300.0, GetParam().angle_deg * degree, GetParam().mach};
+  problem.exit_pressure = 1e4;
+  const InletStream stream = scale(problem).inlet;
+  EXPECT_NEAR(stream.simple_wave, stream_.simple_wave, 1e-14);
+  const double side = stream.cotangent < 0.0 ? -1.0 : 1.0, theta = 0.5, mach = 2.6;
+  const auto q = unit_stream(mach * mach, gamma);
+  ASSERT_GT(mach * std::cos(theta), 1.5);
+  const std::vector<State<double>> cells(
+      faces, {q.density, q.speed * std::cos(theta), side * q.speed * std::sin(theta), q.pressure});
+  std::vector<State<double>> boundary(faces);
+  inlet_states<double>(cells, stream, waves_, boundary);
+  for (const auto& face : boundary) EXPECT_NEAR(face[1] / speed_of_sound(face, gamma), 1.0, 1e-6);
 }
 
 INSTANTIATE_TEST_SUITE_P(Streams, InletWithWaves, testing::ValuesIn(streams),

@@ -59,5 +59,23 @@ TEST_F(RefreshedPlanes, GoAShareOfTheWay) {
               1e-14);
 }
 
+// Pressure behind a shock along the plane: p (1 + 2 gamma/(gamma+1) (M^2 - 1)) with the axial Mach
+// number M (NACA Report 1135, eq. 93). Below it the shock is swept away, above it runs into the
+// row.
+TEST_F(RefreshedPlanes, LetAllOutWhereTheSetPressureIsBelowThatBehindAShock) {
+  const double p = 0.2, mach = 1.4, tangential = -0.9;
+  const State<double> leaving{gamma * p, mach, tangential, p};
+  const double behind = p * (1.0 + 2.0 * gamma / (gamma + 1.0) * (mach * mach - 1.0));
+  for (const double set : {0.5 * p, 1.5 * p, 0.999 * behind, 1.001 * behind, 2.0 * behind}) {
+    scaled_.outlet.pressure = set;
+    refresh_planes(scaled_, cells(leaving));
+    EXPECT_NEAR(scaled_.outlet.pressure_behind_shock, behind, 1e-12);
+    EXPECT_EQ(scaled_.outlet.axially_supersonic, set < behind) << set / p;
+  }
+  scaled_.outlet.pressure = 0.5 * p;
+  refresh_planes(scaled_, cells({gamma * p, 0.95, tangential, p}));
+  EXPECT_FALSE(scaled_.outlet.axially_supersonic);
+}
+
 }  // namespace
 }  // namespace falcate::solver
