@@ -75,7 +75,7 @@ mesh::PassageMesh channel(const Range& range, int n, const OrderCase& c) {
 
 class Ringleb : public testing::TestWithParam<OrderCase> {
  protected:
-  static void expect_second_order(const Range& range, double least_pressure_order = 1.8) {
+  static void expect_second_order(const Range& range, double least_pressure_order = 1.9) {
     std::vector<double> entropy, pressure;
     for (const int n : {6, 12, 24}) {
       const auto e = solved_errors(channel(range, n, GetParam()), gamma, ringleb);
@@ -83,15 +83,16 @@ class Ringleb : public testing::TestWithParam<OrderCase> {
       pressure.push_back(e.pressure);
       std::printf("%2d cells across: entropy %.3e pressure %.3e\n", n, e.entropy, e.pressure);
     }
-    EXPECT_GT(observed_order(entropy), 1.8);
+    EXPECT_GT(observed_order(entropy), 1.9);
     EXPECT_GT(observed_order(pressure), least_pressure_order);
   }
 };
 
-// Triangles alone fall short here: their pressure order is 1.74 on these meshes (entropy keeps its
-// order), and that figure is held. Passages are meshed by quadrilaterals, which meet 1.8.
+// Triangles alone fall short here: their pressure order is 1.73 on these meshes (entropy keeps its
+// order), from the supersonic part along the convex wall, and that figure is held. Passages are
+// meshed by quadrilaterals, which meet 1.9.
 TEST_P(Ringleb, ErrorsFallAtSecondOrderThroughMachOne) {
-  expect_second_order(transonic, GetParam().cells == mesh::CellKind::triangles ? 1.7 : 1.8);
+  expect_second_order(transonic, GetParam().cells == mesh::CellKind::triangles ? 1.7 : 1.9);
 }
 TEST_P(Ringleb, ErrorsFallAtSecondOrderBelowMachOne) { expect_second_order(subsonic); }
 

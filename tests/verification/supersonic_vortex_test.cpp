@@ -40,8 +40,8 @@ TEST_P(SupersonicVortex, ErrorsFallAtSecondOrder) {
     pressure.push_back(e.pressure);
     std::printf("%2d cells across: entropy %.3e pressure %.3e\n", n, e.entropy, e.pressure);
   }
-  EXPECT_GT(observed_order(entropy), 1.8);
-  EXPECT_GT(observed_order(pressure), 1.8);
+  EXPECT_GT(observed_order(entropy), 1.9);
+  EXPECT_GT(observed_order(pressure), 1.9);
 }
 
 INSTANTIATE_TEST_SUITE_P(Cells, SupersonicVortex, testing::ValuesIn(order_cases),
