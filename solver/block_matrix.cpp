@@ -3,6 +3,8 @@
 #include <algorithm>
 #include <cassert>
 
+#include "solver/block_sum.h"
+
 namespace falcate::solver {
 
 BlockMatrix::BlockMatrix(const std::vector<std::vector<int>>& pattern) {
@@ -28,14 +30,26 @@ void BlockMatrix::set_zero() {
   for (auto& block : blocks_) block.setZero();
 }
 
+Eigen::Vector4f BlockMatrix::row_product(int row, const SingleVector& x) const {
+  BlockSum sum;
+  for (std::size_t k = begin(row); k < end(row); ++k)
+    sum.add(blocks_[k], x.data() + 4 * columns_[k]);
+  return sum.total();
+}
+
+void BlockMatrix::multiply(const SingleVector& x, SingleVector& y) const {
+  y.resize(x.size());
+#pragma omp parallel for schedule(static)
+  for (int row = 0; row < rows(); ++row) {
+    y.segment<4>(4 * row) = row_product(row, x);
+  }
+}
+
 void BlockMatrix::residual(const SingleVector& b, const SingleVector& x, SingleVector& r) const {
   r.resize(b.size());
 #pragma omp parallel for schedule(static)
   for (int row = 0; row < rows(); ++row) {
-    Eigen::Vector4f sum = b.segment<4>(4 * row);
-    for (std::size_t k = begin(row); k < end(row); ++k)
-      sum.noalias() -= blocks_[k] * x.segment<4>(4 * columns_[k]);
-    r.segment<4>(4 * row) = sum;
+    r.segment<4>(4 * row) = b.segment<4>(4 * row) - row_product(row, x);
   }
 }
 

@@ -29,13 +29,16 @@ class BlockMatrix {
   std::size_t block_count() const { return columns_.size(); }
   void set_zero();
 
-  /// r = b - A x; the same bits for every number of threads.
+  /// y = A x, r = b - A x; the same bits for every number of threads.
+  void multiply(const SingleVector& x, SingleVector& y) const;
   void residual(const SingleVector& b, const SingleVector& x, SingleVector& r) const;
 
  private:
+  Eigen::Vector4f row_product(int row, const SingleVector& x) const;
+
   std::vector<std::size_t> start_, diagonal_;
   std::vector<int> columns_;
-  std::vector<Block> blocks_;
+  std::vector<Block, Eigen::aligned_allocator<Block>> blocks_;
 };
 
 }  // namespace falcate::solver

@@ -54,14 +54,13 @@ void subtract(const Eigen::MatrixXf& basis, const Vector& h, SingleVector& w) {
 Gmres::Gmres(Eigen::Index size, int restart)
     : restart_(restart),
       basis_(size, restart + 1),
-      next_(size),
       residual_(size),
       direction_(size),
-      product_(size) {}
+      next_(size) {}
 
 /// Takes the basis out of next_ and returns the length that is left; fills column k of H.
 double Gmres::orthogonalise(int k) {
-  constexpr double cancelled = 0.3;
+  constexpr double cancelled = 0.05;
   const double before = norm(next_);
   Vector h = projections(basis_, k + 1, next_);
   subtract(basis_, h, next_);
@@ -95,32 +94,30 @@ void Gmres::expand(int k) {
   rhs_(k) *= r.c;
 }
 
-void Gmres::correct(const LinearMap& precondition, int k, Vector& x) {
+void Gmres::correct(const LinearMap& precondition, int k, SingleVector& x) {
   if (k == 0) return;
   const Vector y =
       hessenberg_.topLeftCorner(k, k).triangularView<Eigen::Upper>().solve(rhs_.head(k));
   next_.setZero();
   subtract(basis_, -y, next_);
-  direction_ = next_.cast<double>();
-  precondition(direction_, product_);
-  x += product_;
+  precondition(next_, direction_);
+  x += direction_;
 }
 
 /// One Arnoldi cycle from residual_; adds its correction to x and returns the iterations spent.
 int Gmres::cycle(const LinearMap& multiply, const LinearMap& precondition, double target,
-                 int length, Vector& x) {
-  const double beta = residual_.norm();
-  basis_.col(0) = (residual_ / beta).cast<float>();
+                 int length, SingleVector& x) {
+  const double beta = norm(residual_);
+  basis_.col(0) = residual_ / static_cast<float>(beta);
   hessenberg_ = Eigen::MatrixXd::Zero(length + 1, length);
   rhs_ = Vector::Zero(length + 1);
   rhs_(0) = beta;
   rotations_.clear();
   int k = 0;
   while (k < length && std::abs(rhs_(k)) > target) {
-    product_ = basis_.col(k).cast<double>();
-    precondition(product_, direction_);
-    multiply(direction_, product_);
-    next_ = product_.cast<float>();
+    residual_ = basis_.col(k);
+    precondition(residual_, direction_);
+    multiply(direction_, next_);
     expand(k);
     ++k;
     if (!std::isfinite(rhs_(k))) break;
@@ -129,22 +126,22 @@ int Gmres::cycle(const LinearMap& multiply, const LinearMap& precondition, doubl
   return k;
 }
 
-GmresSummary Gmres::solve(const LinearMap& multiply, const LinearMap& precondition, const Vector& b,
-                          Vector& x, const GmresOptions& options) {
+GmresSummary Gmres::solve(const LinearMap& multiply, const LinearMap& precondition,
+                          const SingleVector& b, SingleVector& x, const GmresOptions& options) {
   GmresSummary summary;
-  const double size = b.norm();
+  const double size = norm(b);
   if (size == 0.0) {
     x.setZero(b.size());
     return {true, 0, 0.0};
   }
   while (true) {
-    if (x.isZero(0.0)) {
+    if (x.isZero(0.0f)) {
       residual_ = b;
     } else {
-      multiply(x, product_);
-      residual_ = b - product_;
+      multiply(x, next_);
+      residual_ = b - next_;
     }
-    summary.reduction = residual_.norm() / size;
+    summary.reduction = norm(residual_) / size;
     summary.converged = summary.reduction <= options.tolerance;
     const int left = options.max_iterations - summary.iterations;
     if (summary.converged || left <= 0 || !std::isfinite(summary.reduction)) return summary;

@@ -4,6 +4,8 @@
 #include <algorithm>
 #include <map>
 
+#include "solver/block_sum.h"
+
 namespace falcate::solver {
 namespace {
 
@@ -41,7 +43,9 @@ IncompleteLu::IncompleteLu(const BlockMatrix& matrix, int level_of_fill)
 IncompleteLu::IncompleteLu(const BlockMatrix& matrix, int level_of_fill, RowRange rows)
     : rows_(rows), factors_(filled_pattern(matrix, level_of_fill, rows)) {}
 
-void IncompleteLu::load(const BlockMatrix& matrix) {
+/// Entries of the term on the places of the factors.
+void IncompleteLu::add(const WeightedMatrix& term) {
+  const BlockMatrix& matrix = *term.matrix;
   BlockMatrix& f = factors_;
   for (int row = 0; row < f.rows(); ++row) {
     std::size_t k = matrix.begin(rows_.first + row);
@@ -49,17 +53,20 @@ void IncompleteLu::load(const BlockMatrix& matrix) {
     for (std::size_t place = f.begin(row); place < f.end(row); ++place) {
       const int column = rows_.first + f.column(place);
       while (k < last && matrix.column(k) < column) ++k;
-      if (k < last && matrix.column(k) == column)
-        f.block(place) = matrix.block(k);
-      else
-        f.block(place).setZero();
+      if (k < last && matrix.column(k) == column) f.block(place) += term.weight * matrix.block(k);
     }
   }
 }
 
 void IncompleteLu::factor(const BlockMatrix& matrix) {
-  load(matrix);
+  const WeightedMatrix whole{&matrix, 1.0f};
+  factor({&whole, 1});
+}
+
+void IncompleteLu::factor(std::span<const WeightedMatrix> sum) {
   BlockMatrix& f = factors_;
+  f.set_zero();
+  for (const WeightedMatrix& term : sum) add(term);
   std::vector<std::ptrdiff_t> where(static_cast<std::size_t>(f.rows()), -1);
   const auto slot = [&](std::size_t k) -> std::ptrdiff_t& {
     return where[static_cast<std::size_t>(f.column(k))];
@@ -85,16 +92,17 @@ void IncompleteLu::solve(const Eigen::Ref<const SingleVector>& b, SingleVector& 
   const BlockMatrix& f = factors_;
   x.resize(b.size());
   for (int row = 0; row < f.rows(); ++row) {
-    Eigen::Vector4f sum = b.segment<4>(4 * row);
+    BlockSum sum;
     for (std::size_t k = f.begin(row); k < f.diagonal(row); ++k)
-      sum.noalias() -= f.block(k) * x.segment<4>(4 * f.column(k));
-    x.segment<4>(4 * row) = sum;
+      sum.add(f.block(k), x.data() + 4 * f.column(k));
+    x.segment<4>(4 * row) = b.segment<4>(4 * row) - sum.total();
   }
   for (int row = f.rows() - 1; row >= 0; --row) {
-    Eigen::Vector4f sum = x.segment<4>(4 * row);
+    BlockSum sum;
     for (std::size_t k = f.diagonal(row) + 1; k < f.end(row); ++k)
-      sum.noalias() -= f.block(k) * x.segment<4>(4 * f.column(k));
-    x.segment<4>(4 * row).noalias() = f.block(f.diagonal(row)) * sum;
+      sum.add(f.block(k), x.data() + 4 * f.column(k));
+    const Eigen::Vector4f rest = x.segment<4>(4 * row) - sum.total();
+    x.segment<4>(4 * row).noalias() = f.block(f.diagonal(row)) * rest;
   }
 }
 

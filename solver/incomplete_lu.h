@@ -4,6 +4,8 @@
 /// Source: Saad, Iterative Methods for Sparse Linear Systems, 2nd ed. 2003, sec. 10.3.
 /// Errors: none thrown; a singular pivot block shows as non-finite values in the solution.
 #pragma once
+#include <span>
+
 #include "solver/block_matrix.h"
 
 namespace falcate::solver {
@@ -14,6 +16,11 @@ struct RowRange {
   int size() const { return last - first; }
 };
 
+struct WeightedMatrix {
+  const BlockMatrix* matrix;
+  float weight;
+};
+
 class IncompleteLu {
  public:
   /// Lays out the factors for matrices of this pattern; of a part of its rows only where told so,
@@ -21,11 +28,13 @@ class IncompleteLu {
   IncompleteLu(const BlockMatrix& matrix, int level_of_fill);
   IncompleteLu(const BlockMatrix& matrix, int level_of_fill, RowRange rows);
   void factor(const BlockMatrix& matrix);
+  /// Of a weighted sum of matrices whose patterns lie within that of the layout.
+  void factor(std::span<const WeightedMatrix> sum);
   /// x = (LU)^-1 b, both of the length of the rows worked on.
   void solve(const Eigen::Ref<const SingleVector>& b, SingleVector& x) const;
 
  private:
-  void load(const BlockMatrix& matrix);
+  void add(const WeightedMatrix& term);
 
   RowRange rows_;
   BlockMatrix factors_;  ///< unit L below, U above, inverse pivots on the diagonal

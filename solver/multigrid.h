@@ -1,15 +1,13 @@
 /// Agglomeration multigrid as an approximate inverse of a block matrix: one V cycle.
-/// Cells are joined in groups of about four, level by level; the coarse matrix sums the blocks of a
-/// group (Galerkin product with piecewise constant transfer), which for a first-order finite-volume
-/// matrix is that of the scheme on the joined cells. Each level is smoothed once before and once
+/// Cells are joined level by level (agglomeration.h). Each level is smoothed once before and once
 /// after by block ILU(k); the coarsest is solved directly.
-/// Source: Lallemand, Steve & Dervieux, Computers & Fluids 21(3) (1992) 397-433; Trottenberg,
-/// Oosterlee & Schueller, Multigrid, Academic Press 2001, ch. 2.
+/// Source: Trottenberg, Oosterlee & Schueller, Multigrid, Academic Press 2001, ch. 2.
 /// Errors: none thrown; a singular block shows as non-finite values in the solution.
 #pragma once
 #include <Eigen/LU>
 #include <memory>
 
+#include "solver/agglomeration.h"
 #include "solver/schwarz_smoother.h"
 
 namespace falcate::solver {
@@ -19,9 +17,6 @@ struct MultigridOptions {
   int coarsest = 40;       ///< cells at most on the level solved directly
   int rows_a_run = 10000;  ///< of the smoother
 };
-
-/// Group of each cell: neighbours joined by about four, in the order of the cells.
-std::vector<int> agglomerate(const BlockMatrix& pattern);
 
 class Multigrid {
  public:
@@ -36,8 +31,7 @@ class Multigrid {
   struct Level {
     const BlockMatrix& matrix;
     SchwarzSmoother smoother;
-    std::vector<int> group;           ///< of each cell, on the next level
-    std::vector<std::size_t> target;  ///< block of the next matrix each block adds to
+    Agglomeration joined;
     mutable SingleVector rhs, solution, rest, change;
   };
   void add_level(const BlockMatrix& matrix);

@@ -27,8 +27,13 @@ SchwarzSmoother::SchwarzSmoother(const BlockMatrix& matrix, int level_of_fill, i
 }
 
 void SchwarzSmoother::factor(const BlockMatrix& matrix) {
+  const WeightedMatrix whole{&matrix, 1.0f};
+  factor({&whole, 1});
+}
+
+void SchwarzSmoother::factor(std::span<const WeightedMatrix> sum) {
 #pragma omp parallel for schedule(static)
-  for (Run& run : runs_) run.factors.factor(matrix);
+  for (Run& run : runs_) run.factors.factor(sum);
 }
 
 void SchwarzSmoother::solve(const SingleVector& b, SingleVector& x) const {

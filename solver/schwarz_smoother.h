@@ -12,6 +12,7 @@ class SchwarzSmoother {
  public:
   SchwarzSmoother(const BlockMatrix& matrix, int level_of_fill, int rows_a_run);
   void factor(const BlockMatrix& matrix);
+  void factor(std::span<const WeightedMatrix> sum);
   /// x is about A^-1 b
   void solve(const SingleVector& b, SingleVector& x) const;
 

@@ -1,12 +1,12 @@
 /// Steady flow of one passage by pseudo-transient Newton-Krylov with exact linearisation.
 ///
 /// Each step solves (V M / dt + dR/dq) dq = -R, M = dU/dq, dt = CFL V / sum of face wave speeds, by
-/// GMRES preconditioned with a multigrid cycle on a compact matrix near that of the first-order
-/// scheme; the exact derivative is applied, never assembled. CFL grows as the residual falls, so
-/// the last steps are Newton's own. Where no steady flow is found, the flow is marched in time by
-/// implicit Euler steps of one fiftieth of the passage time (plane to plane at the reference
-/// speed), shorter where a cell would change too much, first to forget its start, then to be
-/// averaged; the solution says so. Cells all but empty of gas stop neither way.
+/// GMRES on the assembled exact derivative (newton_matrix.h), preconditioned in two stages
+/// (newton_preconditioner.h). CFL grows with every whole step, so the last steps are Newton's own.
+/// Where no steady flow is found, the flow is marched in time by implicit Euler steps of one
+/// fiftieth of the passage time (plane to plane at the reference speed), shorter where a cell would
+/// change too much, first to forget its start, then to be averaged; the solution says so. Cells all
+/// but empty of gas stop neither way.
 ///
 /// Sources: Kelley & Keyes, SIAM J. Numer. Anal. 35(2) (1998) 508-523 (pseudo-transient
 /// continuation); Knoll & Keyes, J. Comput. Phys. 193 (2004) 357-397.
@@ -26,7 +26,7 @@ struct SteadyOptions {
   int max_steps = 150;           ///< Newton steps, of both attempts together
   int averaging_steps = 160;     ///< time steps averaged where there is no steady flow; 0: none
   double initial_cfl = 10.0;
-  int level_of_fill = 1;  ///< of the preconditioner's smoother
+  int level_of_fill = 1;  ///< of the smoother on the preconditioner's coarse levels
   SchemeOptions scheme;
 };
 

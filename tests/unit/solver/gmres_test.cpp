@@ -10,45 +10,49 @@ namespace falcate::solver {
 namespace {
 
 /// With the memory for `restart` directions.
-GmresSummary gmres(const LinearMap& multiply, const LinearMap& precondition, const Vector& b,
-                   Vector& x, const GmresOptions& options, int restart) {
+GmresSummary gmres(const LinearMap& multiply, const LinearMap& precondition, const SingleVector& b,
+                   SingleVector& x, const GmresOptions& options, int restart) {
   return Gmres(b.size(), restart).solve(multiply, precondition, b, x, options);
 }
 
-const LinearMap nothing = [](const Vector& x, Vector& y) { y = x; };
+const LinearMap nothing = [](const SingleVector& x, SingleVector& y) { y = x; };
 
 struct System {
   BlockMatrix matrix;
   Eigen::MatrixXd full;
-  Vector b;
+  SingleVector b;
   explicit System(const Pattern& pattern, double extra = 6.0)
       : matrix(random_matrix(pattern, 5, extra)),
         full(dense(matrix)),
-        b(random_vector(matrix, 6)) {}
+        b(random_vector(matrix, 6).cast<float>()) {}
   LinearMap product() const {
-    return [this](const Vector& x, Vector& y) { y = full * x; };
+    return [this](const SingleVector& x, SingleVector& y) {
+      y = (full * x.cast<double>()).cast<float>();
+    };
   }
-  double reduction(const Vector& x) const { return (b - full * x).norm() / b.norm(); }
-  Vector exact() const { return full.partialPivLu().solve(b); }
+  double reduction(const SingleVector& x) const {
+    return (b.cast<double>() - full * x.cast<double>()).norm() / b.cast<double>().norm();
+  }
+  SingleVector exact() const { return full.partialPivLu().solve(b.cast<double>()).cast<float>(); }
 };
 
 TEST(Gmres, FindsTheAnswerOfTheDenseLu) {
   const System s(star(6));
-  Vector x = Vector::Zero(s.b.size());
-  const auto summary = gmres(s.product(), nothing, s.b, x, {1e-12, 400}, 200);
+  SingleVector x = SingleVector::Zero(s.b.size());
+  const auto summary = gmres(s.product(), nothing, s.b, x, {1e-5, 400}, 200);
   EXPECT_TRUE(summary.converged);
-  EXPECT_LE(summary.reduction, 1e-12);
-  EXPECT_LT((x - s.exact()).norm(), 1e-11 * x.norm());
+  EXPECT_LE(summary.reduction, 1e-5);
+  EXPECT_LT((x - s.exact()).norm(), 1e-5f * x.norm());
 }
 
 TEST(Gmres, SaysTheReductionItReached) {
   const System s(star(6));
-  for (const double tolerance : {1e-1, 1e-3, 1e-6}) {
-    Vector x = Vector::Zero(s.b.size());
+  for (const double tolerance : {1e-1, 1e-3, 1e-5}) {
+    SingleVector x = SingleVector::Zero(s.b.size());
     const auto summary = gmres(s.product(), nothing, s.b, x, {tolerance, 400}, 60);
     EXPECT_TRUE(summary.converged);
     EXPECT_LE(summary.reduction, tolerance);
-    EXPECT_NEAR(summary.reduction, s.reduction(x), 1e-13);
+    EXPECT_NEAR(summary.reduction, s.reduction(x), 2e-7);
     EXPECT_GT(summary.iterations, 0);
   }
 }
@@ -56,7 +60,7 @@ TEST(Gmres, SaysTheReductionItReached) {
 // In exact arithmetic as many steps as unknowns suffice (Saad & Schultz 1986, sec. 3.4).
 TEST(Gmres, EndsWithinAsManyStepsAsUnknowns) {
   const System s(tridiagonal(3), 2.0);
-  Vector x = Vector::Zero(12);
+  SingleVector x = SingleVector::Zero(12);
   const auto summary = gmres(s.product(), nothing, s.b, x, {1e-5, 100}, 100);
   EXPECT_TRUE(summary.converged);
   EXPECT_LE(summary.iterations, 12);
@@ -65,9 +69,11 @@ TEST(Gmres, EndsWithinAsManyStepsAsUnknowns) {
 TEST(Gmres, TakesOneStepWithTheInverseAsPreconditioner) {
   const System s(star(4));
   const Eigen::PartialPivLU<Eigen::MatrixXd> lu(dense(s.matrix));
-  Vector x = Vector::Zero(s.b.size());
+  SingleVector x = SingleVector::Zero(s.b.size());
   const auto summary = gmres(
-      s.product(), [&](const Vector& r, Vector& y) { y = lu.solve(r); }, s.b, x, {1e-5, 50}, 50);
+      s.product(),
+      [&](const SingleVector& r, SingleVector& y) { y = lu.solve(r.cast<double>()).cast<float>(); },
+      s.b, x, {1e-5, 50}, 50);
   EXPECT_TRUE(summary.converged);
   EXPECT_EQ(summary.iterations, 1);
 }
@@ -76,46 +82,41 @@ TEST(Gmres, NeedsFewerStepsWithIncompleteFactors) {
   const System s(star(12), 5.0);
   IncompleteLu lu(s.matrix, 1);
   lu.factor(s.matrix);
-  Vector plain = Vector::Zero(s.b.size()), helped = plain;
+  SingleVector plain = SingleVector::Zero(s.b.size()), helped = plain;
   const auto slow = gmres(s.product(), nothing, s.b, plain, {1e-5, 500}, 500);
   const auto fast = gmres(
-      s.product(),
-      [&](const Vector& r, Vector& y) {
-        SingleVector out;
-        lu.solve(r.cast<float>(), out);
-        y = out.cast<double>();
-      },
-      s.b, helped, {1e-5, 500}, 500);
+      s.product(), [&](const SingleVector& r, SingleVector& y) { lu.solve(r, y); }, s.b, helped,
+      {1e-5, 500}, 500);
   ASSERT_TRUE(slow.converged && fast.converged);
   EXPECT_LT(2 * fast.iterations, slow.iterations);
-  EXPECT_LT((plain - helped).norm(), 1e-3 * plain.norm());
+  EXPECT_LT((plain - helped).norm(), 1e-3f * plain.norm());
 }
 
 TEST(Gmres, StopsAtTheLimitAndSaysSo) {
   const System s(star(6));
-  Vector x = Vector::Zero(s.b.size());
+  SingleVector x = SingleVector::Zero(s.b.size());
   const auto summary = gmres(s.product(), nothing, s.b, x, {1e-14, 7}, 3);
   EXPECT_FALSE(summary.converged);
   EXPECT_EQ(summary.iterations, 7);
   EXPECT_GT(summary.reduction, 1e-14);
   EXPECT_LT(summary.reduction, 1.0);
-  EXPECT_NEAR(summary.reduction, s.reduction(x), 1e-13);
+  EXPECT_NEAR(summary.reduction, s.reduction(x), 2e-7);
 }
 
 TEST(Gmres, GoesOnAfterARestart) {
   const System s(star(6));
-  Vector x = Vector::Zero(s.b.size());
-  const auto summary = gmres(s.product(), nothing, s.b, x, {1e-10, 2000}, 5);
+  SingleVector x = SingleVector::Zero(s.b.size());
+  const auto summary = gmres(s.product(), nothing, s.b, x, {1e-5, 2000}, 5);
   EXPECT_TRUE(summary.converged);
   EXPECT_GT(summary.iterations, 5);
-  EXPECT_LT((x - s.exact()).norm(), 1e-8 * x.norm());
+  EXPECT_LT((x - s.exact()).norm(), 1e-4f * x.norm());
 }
 
 TEST(Gmres, StartsFromTheGuess) {
   const System s(star(4));
-  Vector x = s.exact();
-  const Vector before = x;
-  const auto summary = gmres(s.product(), nothing, s.b, x, {1e-9, 50}, 50);
+  SingleVector x = s.exact();
+  const SingleVector before = x;
+  const auto summary = gmres(s.product(), nothing, s.b, x, {1e-5, 50}, 50);
   EXPECT_TRUE(summary.converged);
   EXPECT_EQ(summary.iterations, 0);
   EXPECT_EQ(x, before);
@@ -123,18 +124,18 @@ TEST(Gmres, StartsFromTheGuess) {
 
 TEST(Gmres, AnswersZeroForZero) {
   const System s(tridiagonal(3));
-  Vector x = Vector::Ones(12);
-  const auto summary = gmres(s.product(), nothing, Vector::Zero(12), x, {}, 10);
+  SingleVector x = SingleVector::Ones(12);
+  const auto summary = gmres(s.product(), nothing, SingleVector::Zero(12), x, {}, 10);
   EXPECT_TRUE(summary.converged);
   EXPECT_EQ(summary.iterations, 0);
   EXPECT_EQ(summary.reduction, 0.0);
-  EXPECT_EQ(x, Vector::Zero(12));
+  EXPECT_EQ(x, SingleVector::Zero(12));
 }
 
 TEST(Gmres, GivesUpOnWhatIsNotFinite) {
-  Vector x = Vector::Zero(4);
-  const auto summary = gmres([](const Vector& v, Vector& y) { y = v * std::nan(""); }, nothing,
-                             Vector::Ones(4), x, {1e-6, 50}, 50);
+  SingleVector x = SingleVector::Zero(4);
+  const auto summary = gmres([](const SingleVector& v, SingleVector& y) { y = v * std::nanf(""); },
+                             nothing, SingleVector::Ones(4), x, {1e-6, 50}, 50);
   EXPECT_FALSE(summary.converged);
   EXPECT_LE(summary.iterations, 1);
 }

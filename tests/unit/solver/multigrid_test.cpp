@@ -37,11 +37,11 @@ double reduction(const BlockMatrix& m, const MultigridOptions& options) {
   return (b.cast<double>() - dense(m) * x.cast<double>()).norm() / b.norm();
 }
 
-TEST(Agglomerate, JoinsNeighboursByAboutFour) {
+TEST(Agglomeration, JoinsNeighboursByAboutFour) {
   const BlockMatrix m(star(20));
-  const auto group = agglomerate(m);
+  const Agglomeration joined(m);
   std::map<int, std::vector<int>> members;
-  for (int i = 0; i < m.rows(); ++i) members[group[static_cast<std::size_t>(i)]].push_back(i);
+  for (int i = 0; i < m.rows(); ++i) members[joined.group(i)].push_back(i);
   EXPECT_LT(members.size(), 160u);
   EXPECT_GE(members.size(), 100u);
   EXPECT_EQ(members.begin()->first, 0);
