@@ -1,57 +1,17 @@
-// Helpers of the verification tests: solve a mesh with prescribed exact boundaries, measure errors.
+/// Flows with exact solutions on families of meshes: errors, and the order at which they fall.
+/// Units: density and speed of sound at rest (isentropic vortex: far away) 1, so pressure there
+/// 1/gamma.
 #pragma once
-#include <gtest/gtest.h>
-
-#include <cmath>
 #include <functional>
+#include <string>
+#include <vector>
 
 #include "mesh/structured.h"
 #include "solver/steady_solver.h"
 
 namespace falcate::verification {
 
-struct Errors {
-  double entropy = 0.0, pressure = 0.0;  ///< area-weighted L2
-};
-
-/// Least-squares slope of log(error) against log(h), h halved from one entry to the next.
-inline double observed_order(const std::vector<double>& errors) {
-  double sxx = 0.0, sxy = 0.0;
-  const double middle = 0.5 * static_cast<double>(errors.size() - 1);
-  for (std::size_t i = 0; i < errors.size(); ++i) {
-    const double x = -(static_cast<double>(i) - middle) * std::log(2.0);
-    sxx += x * x;
-    sxy += x * std::log(errors[i]);
-  }
-  return sxy / sxx;
-}
-
-/// `exact` in units with total density 1 and total pressure 1/gamma (speed of sound at rest 1).
-inline Errors solved_errors(const mesh::PassageMesh& mesh, double gamma,
-                            const std::function<solver::Primitive(const mesh::Point&)>& exact) {
-  solver::FlowProblem problem;
-  problem.mesh = &mesh;
-  problem.gas = {gamma, 1.0};
-  problem.inlet = {1.0 / gamma, 1.0 / gamma, std::acos(0.0), {}};
-  problem.exit_pressure = 0.5 / gamma;
-  problem.prescribed = exact;
-  std::vector<solver::Primitive> start;
-  for (const auto& x : mesh.centroids()) start.push_back(exact(x));
-  const auto solution = solver::solve_steady(problem, {}, start);
-  EXPECT_EQ(solution.summary.status, solver::SolutionStatus::steady) << solution.summary.reason;
-  Errors e;
-  double area = 0.0;
-  for (int i = 0; i < mesh.cell_count(); ++i) {
-    const auto ui = static_cast<std::size_t>(i);
-    const auto& q = solution.cells[ui];
-    const double entropy = q.pressure * gamma / std::pow(q.density, gamma) - 1.0;
-    const double dp = q.pressure - exact(mesh.centroids()[ui]).pressure;
-    e.entropy += mesh.areas()[ui] * entropy * entropy;
-    e.pressure += mesh.areas()[ui] * dp * dp;
-    area += mesh.areas()[ui];
-  }
-  return {std::sqrt(e.entropy / area), std::sqrt(e.pressure / area)};
-}
+inline constexpr double gamma_of_air = 1.4;
 
 struct OrderCase {
   const char* name;
@@ -59,9 +19,40 @@ struct OrderCase {
   double perturbation;  ///< of the coarsest mesh; halved with the spacing, as on nested meshes
 };
 
-inline const OrderCase order_cases[] = {{"quads", mesh::CellKind::quads, 0.0},
-                                        {"stirred_quads", mesh::CellKind::quads, 0.15},
-                                        {"triangles", mesh::CellKind::triangles, 0.0},
-                                        {"mixed", mesh::CellKind::mixed, 0.0}};
+inline constexpr OrderCase order_cases[] = {{"quads", mesh::CellKind::quads, 0.0},
+                                            {"stirred_quads", mesh::CellKind::quads, 0.15},
+                                            {"triangles", mesh::CellKind::triangles, 0.0},
+                                            {"mixed", mesh::CellKind::mixed, 0.0}};
+
+struct ExactFlow {
+  const char* name;
+  const char* words;   ///< for a page
+  const char* source;  ///< for a page
+  int coarsest;        ///< cells across on the coarsest of three meshes
+  solver::Primitive (*exact)(const mesh::Point&);
+  /// Walls on the true curves, the exact state prescribed elsewhere.
+  mesh::PassageMesh (*mesh)(int n, const OrderCase& c);
+};
+const std::vector<ExactFlow>& exact_flows();
+const ExactFlow& exact_flow(const std::string& name);  ///< std::out_of_range where there is none
+
+struct Errors {
+  double entropy = 0.0, pressure = 0.0;  ///< area-weighted L2
+  solver::SteadySummary summary;
+};
+Errors solved_errors(const ExactFlow& flow, int n, const OrderCase& c);
+
+/// Least-squares slope of log(error) against log(h), h halved from one entry to the next.
+double observed_order(const std::vector<double>& errors);
+
+/// Three meshes, spacing halved from one to the next.
+struct OrderStudy {
+  std::vector<Errors> errors;
+  double entropy_order = 0.0, pressure_order = 0.0;
+};
+OrderStudy order_study(const ExactFlow& flow, const OrderCase& c);
+
+/// Point of Ringleb's streamline k with speed q; side +1 above the axis of symmetry, -1 below.
+mesh::Point ringleb_point(double k, double q, double side);
 
 }  // namespace falcate::verification

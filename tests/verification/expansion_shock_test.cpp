@@ -3,11 +3,13 @@
 // at the sonic point keeps it. Every row of the flux table must take it apart, as the exact
 // solution of the Riemann problem does (Toro, Riemann Solvers and Numerical Methods for Fluid
 // Dynamics, 3rd ed. 2009, chs. 4 and 6).
+#include <gtest/gtest.h>
+
 #include <algorithm>
 
+#include "mesh/structured.h"
 #include "solver/exact_riemann.h"
 #include "solver/gas_dynamics.h"
-#include "tests/verification/exact_flow.h"
 #include "tests/verification/marched_flow.h"
 
 namespace falcate::verification {

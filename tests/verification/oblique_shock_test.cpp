@@ -1,13 +1,16 @@
 // Supersonic streams turned by a wall: the oblique shock of a wedge and the fan of a convex corner.
 // Exact: tests/data/oblique_shock_checks.csv (source in its first line); the fan from NACA Report
 // 1135 (1953), Prandtl-Meyer flow: Mach 2 turned by 10 deg leaves at Mach 2.384887, p2/p1 0.547969.
+#include <gtest/gtest.h>
+
 #include <algorithm>
 #include <fstream>
 #include <numbers>
 #include <sstream>
 
+#include "mesh/structured.h"
 #include "solver/prandtl_meyer.h"
-#include "tests/verification/exact_flow.h"
+#include "solver/steady_solver.h"
 
 namespace falcate::verification {
 namespace {

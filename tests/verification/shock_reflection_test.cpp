@@ -1,10 +1,13 @@
 // A shock of a Mach 2.9 stream, 29 deg to it, meets a wall and is reflected: three uniform states.
 // Exact by the oblique-shock relations, NACA Report 1135 (1953), eqs. 128 to 139; every row of the
 // flux table must find the angles, pressures and Mach numbers within 1 %.
+#include <gtest/gtest.h>
+
 #include <algorithm>
 #include <numbers>
 
-#include "tests/verification/exact_flow.h"
+#include "mesh/structured.h"
+#include "solver/steady_solver.h"
 
 namespace falcate::verification {
 namespace {

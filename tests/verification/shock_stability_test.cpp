@@ -4,11 +4,13 @@
 // the stream, with no sideways velocity. The gas starts with random disturbances of 1e-4 and the
 // shock anywhere within its cell; the sideways velocity must die away while the stream crosses the
 // duct fifteen times.
+#include <gtest/gtest.h>
+
 #include <random>
 #include <vector>
 
+#include "mesh/structured.h"
 #include "solver/gas_dynamics.h"
-#include "tests/verification/exact_flow.h"
 #include "tests/verification/marched_flow.h"
 
 namespace falcate::verification {
