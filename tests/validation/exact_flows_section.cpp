@@ -23,9 +23,10 @@ const char* const head =
     "|---|---|---|---|---|---|\n";
 
 const char* const tail =
-    "\nTriangles alone fall short of second order in the pressure of Ringleb's flow through Mach "
-    "1,\n"
-    "along the convex wall where it is supersonic; passages are meshed by quadrilaterals.\n\n"
+    "\nOn triangles the discrete equations of Ringleb's flow through Mach 1 have more than one\n"
+    "solution; the solver has also ended at one of order 1.7 in the pressure, off in the "
+    "supersonic\n"
+    "part along the convex wall. Passages are meshed by quadrilaterals.\n\n"
     "Shocks, expansions and the start of a supersonic passage have no order to tell of. The tests "
     "in\n"
     "`tests/verification` and `tests/validation` hold them to exact figures:\n\n"
