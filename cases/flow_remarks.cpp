@@ -80,6 +80,12 @@ std::vector<std::string> flow_remarks(const EntryFacts& entry, const post::Passa
     remarks.push_back(fmt::format(
         "The passage swallows {:.0f} % of the gas that the jet offers; the rest spills past it.",
         100.0 * figures.capacity_ratio));
+  if (entry.wheel && figures.capacity_ratio > 1.02)
+    remarks.push_back(fmt::format(
+        "The passage would swallow {:.0f} % more gas than the jet offers: the jet narrows before "
+        "the blades and fills fewer passages; force, torque and power are those of the nozzles' "
+        "flow.",
+        100.0 * (figures.capacity_ratio - 1.0)));
   add_exit_remark(entry, figures, remarks);
   if (entry.wheel && figures.tangential_force_n_m < 0.0)
     remarks.push_back("The gas brakes the wheel: this speed is beyond runaway.");

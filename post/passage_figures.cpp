@@ -80,12 +80,13 @@ void set_wheel(PassageFigures& figures, double pitch, const WheelDuty& duty) {
   figures.capacity_ratio = figures.mass_flow_kg_s_m / offered;
   const double loaded = jet.mass_flow * std::min(figures.capacity_ratio, 1.0);
   const double height = loaded / figures.mass_flow_kg_s_m;  // of one passage with the same flow
-  figures.tangential_force_n = figures.tangential_force_n_m * height;
+  const double force = figures.tangential_force_n_m -
+                       figures.mass_flow_kg_s_m * surplus_tangential_velocity(figures, duty);
+  figures.tangential_force_n = force * height;
   figures.axial_force_n = figures.axial_force_n_m * height;
   figures.torque_n_m = figures.tangential_force_n * duty.mean_radius;
   figures.power_w = figures.tangential_force_n * u;
-  figures.blade_efficiency =
-      figures.tangential_force_n_m * u / (0.5 * figures.mass_flow_kg_s_m * c1 * c1);
+  figures.blade_efficiency = force * u / (0.5 * figures.mass_flow_kg_s_m * c1 * c1);
   figures.wheel_efficiency =
       figures.power_w / (0.5 * jet.mass_flow * jet.spouting_velocity * jet.spouting_velocity);
 }

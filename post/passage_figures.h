@@ -3,6 +3,8 @@
 ///   capacity ratio   = m / (rho1 c1 sin(alpha1) pitch)   swallowed / offered by the undisturbed
 ///   jet loaded flow      = nozzle flow x min(capacity ratio, 1); the rest spills past the wheel
 ///   F_u on all loaded blades = (F_u/m) x loaded flow;  torque = F_u x radius;  power = F_u x u
+///   From the last three and the efficiencies momentum is taken off that no jet brings
+///   (surplus_tangential_velocity in power_balance.h).
 ///   wheel efficiency = power / (nozzle flow x c_is^2/2), total to static
 /// SI units. The sign of a force is that of the gas on the blade: x axial, y the way the wheel
 /// turns. Errors: MixedOutError where a plane has no through-flow.

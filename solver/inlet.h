@@ -5,7 +5,8 @@
 ///   c4 = p - rho a u by the steady non-reflecting condition of each pitchwise harmonic,
 ///   rho a dv = -((beta + v)/(1 + u)) c4, beta = i sgn(l) sqrt(1 - M^2) (u, v in units of a);
 ///   the outgoing invariant u - 2a/(gamma-1) is the cell's; v_mean gives the momentum of the
-///   stream the set angle.
+///   stream the set angle, or, where a jet is drawn in faster than it comes, its tangential
+///   velocity.
 /// - supersonic with subsonic axial part: |theta| + nu(M), theta from axial, comes in with the
 ///   stream; |theta| - nu(M) leaves with the waves of the blades (unique incidence stays free).
 ///   The shocks among these waves go on ahead of the plane and take total pressure from the gas
@@ -45,14 +46,18 @@ struct InletStream {
 
 namespace inlet_detail {
 
-/// State at total pressure and density 1 from v and the outgoing invariant J = u - 2a/(gamma-1).
+/// State at total pressure and density 1 from v and the outgoing invariant J = u - 2a/(gamma-1);
+/// at most axially sonic either way, where a passing first guess is caught.
 template <class T>
-State<T> from_invariant(const T& j, const T& v, double gamma) {
+State<T> from_invariant(const T& invariant, const T& v, double gamma) {
   using std::pow;
   using std::sqrt;
   const double k = 2.0 / (gamma - 1.0), h = gamma / (gamma - 1.0);
   const double second = 1.0 / (gamma - 1.0) + 0.5 * k * k;
-  const T first = k * j, zeroth = 0.5 * (j * j + v * v) - h;
+  const T left = larger(T(h - 0.5 * v * v), T(0.05 * h));
+  const T sonic = sqrt(2.0 * (gamma - 1.0) / (gamma + 1.0) * left);
+  const T j = larger(smaller(invariant, T((1.0 - k) * sonic)), T(-(1.0 + k) * sonic));
+  const T first = k * j, zeroth = 0.5 * j * j - left;
   const T inside = larger(T(first * first - 4.0 * second * zeroth), T(1e-12));
   const T a = (sqrt(inside) - first) / (2.0 * second);
   const T rho = pow(T(a * a / gamma), 1.0 / (gamma - 1.0));

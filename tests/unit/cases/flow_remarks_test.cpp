@@ -73,6 +73,17 @@ TEST(FlowRemarks, TellOfAPassageThatDoesNotStart) {
                           "number (Kantrowitz limit)."));
 }
 
+TEST(FlowRemarks, TellOfAJetThatNarrows) {
+  auto figures = quiet();
+  figures.capacity_ratio = 1.01;
+  EXPECT_THAT(flow_remarks(entry(0.5, 1.0), figures, false), IsEmpty());
+  figures.capacity_ratio = 1.16;
+  EXPECT_THAT(flow_remarks(entry(0.5, 1.0), figures, false),
+              ElementsAre("The passage would swallow 16 % more gas than the jet offers: the jet "
+                          "narrows before the blades and fills fewer passages; force, torque and "
+                          "power are those of the nozzles' flow."));
+}
+
 TEST(FlowRemarks, TellOfAnExitPressureThatIsMissed) {
   auto figures = quiet();
   // Pressure behind a shock at Mach 1.2 over that ahead of it: 1.513 (NACA Report 1135, table II).

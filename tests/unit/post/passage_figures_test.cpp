@@ -246,14 +246,21 @@ TEST(PassageFigures, SpilledFlowDoesNoWork) {
   EXPECT_NEAR(f.tangential_force_n, 0.7 * s.duty.jet.mass_flow * per_flow, 1e-12);
 }
 
-// A passage that asks for more than is offered gets the nozzle flow and no more.
+// A passage that asks for more than is offered gets the nozzle flow and no more; and no momentum
+// along the wheel beyond that of the jet (momentum theorem on the free jet ahead of the blades),
+// though the stream that enters it at the angle of the jet is a tenth faster.
 TEST(PassageFigures, NoMoreThanTheNozzleFlowIsLoaded) {
   const mesh::PassageMesh mesh = passage();
   const Stage s = stage(mesh, 0.3, 1.1);
   const PassageFigures f = passage_figures(problem(mesh), s.flow, s.duty);
   EXPECT_NEAR(f.capacity_ratio, 1.1, 1e-12);
-  const double per_flow = f.tangential_force_n_m / f.mass_flow_kg_s_m;
+  const double of_jet =
+      s.duty.jet.jet_velocity * std::cos(20.0 * std::numbers::pi / 180.0) - s.duty.blade_speed;
+  const double per_flow = f.tangential_force_n_m / f.mass_flow_kg_s_m - 0.1 * of_jet;
   EXPECT_NEAR(f.tangential_force_n, s.duty.jet.mass_flow * per_flow, 1e-12);
+  EXPECT_NEAR(f.power_w, f.tangential_force_n * s.duty.blade_speed, 1e-12);
+  const double c1 = s.duty.jet.jet_velocity;
+  EXPECT_NEAR(f.blade_efficiency, per_flow * s.duty.blade_speed / (0.5 * c1 * c1), 1e-12);
 }
 
 // Pressure rising along x: both sides come out in the order of x, arc length that of the curve.

@@ -151,5 +151,23 @@ TEST_P(InletWithWaves, IsAtMostAxiallySonic) {
 INSTANTIATE_TEST_SUITE_P(Streams, InletWithWaves, testing::ValuesIn(streams),
                          [](const auto& info) { return std::string(info.param.name); });
 
+// Slower than sound: total enthalpy and total pressure are those at rest and J leaves as it is, up
+// to sonic axial speed either way.
+TEST(SubsonicInlet, KeepsTheInvariantUpToSonicAxialSpeed) {
+  for (const double v : {-0.4, 0.0, 0.8})
+    for (const double j : {-20.0, -5.6, -5.0, -4.5, 2.0}) {
+      const auto q = inlet_detail::from_invariant(j, v, gamma);
+      const double a = speed_of_sound(q, gamma), kept = q[1] - 5.0 * a;
+      EXPECT_NEAR(total_enthalpy(q, gamma), gamma / (gamma - 1.0), 1e-12);
+      EXPECT_NEAR(q[pressure], std::pow(q[density], gamma), 1e-12);
+      EXPECT_LE(std::abs(q[1]), a * (1.0 + 1e-12));
+      if (std::abs(q[1]) < 0.999 * a) {
+        EXPECT_NEAR(kept, j, 1e-12);
+      } else {
+        EXPECT_LT((kept - j) * q[1], 1e-12 * a) << "sonic though J asks for less";
+      }
+    }
+}
+
 }  // namespace
 }  // namespace falcate::solver
