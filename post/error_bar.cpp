@@ -11,31 +11,26 @@
 namespace falcate::post {
 namespace {
 
-constexpr double formal_order = 2.0, lowest_order = 0.5, highest_order = 1.1 * formal_order;
-constexpr double factor = 1.25, wide_factor = 3.0, refinement = 2.0;
+constexpr double formal_order = 2.0, lowest_order = 0.5, factor = 1.25, wide_factor = 3.0,
+                 refinement = 2.0;
 /// Below this change, relative to the figure, meshes differ by the convergence of the solver alone.
 constexpr double round_off = 1e-10;
 
 double index_of(double change, double order, double safety_factor) {
-  return safety_factor * change / (std::pow(refinement, order) - 1.0);
+  return safety_factor * std::abs(change) / (std::pow(refinement, order) - 1.0);
 }
 
 ErrorBar three_meshes(double coarse, double medium, double fine) {
-  const double e21 = std::abs(medium - fine), e32 = std::abs(coarse - medium);
-  if ((coarse - medium) * (medium - fine) < 0.0)
-    return {index_of(std::max(e21, e32), formal_order, wide_factor), formal_order,
-            ErrorBarKind::oscillatory};
+  const double e21 = medium - fine, e32 = coarse - medium;
+  const double second = (e32 - 2.0 * e21) / 6.0, first = e21 - 3.0 * second;
+  const double size = std::abs(first) + std::abs(second);
+  const bool converges = std::abs(e21) < std::abs(e32);
+  if (e21 * e32 < 0.0)
+    return {(converges ? factor : wide_factor) * size, ErrorBarKind::oscillatory};
+  if (!converges) return {wide_factor * size, ErrorBarKind::drifting};
   const double order = std::log2(e32 / e21);  // infinite where the last change is nought
-  if (order < lowest_order)
-    return {std::max(index_of(e21, formal_order, wide_factor), index_of(e21, lowest_order, factor)),
-            lowest_order, ErrorBarKind::out_of_range};
-  if (order > highest_order) {
-    // Two values that happen to meet say little: the coarser change at formal order is the floor.
-    const double change = std::max(e21, e32 / std::pow(refinement, formal_order));
-    return {index_of(change, formal_order, wide_factor), formal_order, ErrorBarKind::out_of_range};
-  }
-  const double used = std::min(order, formal_order);
-  return {index_of(e21, used, factor), used, ErrorBarKind::observed_order};
+  const double slow = order < 1.0 ? index_of(e21, std::max(order, lowest_order), factor) : 0.0;
+  return {std::max(factor * size, slow), ErrorBarKind::converging};
 }
 
 }  // namespace
@@ -69,12 +64,12 @@ GridConvergence grid_convergence(double fine, double medium, double coarse, doub
 
 const char* error_bar_words(ErrorBarKind kind) {
   switch (kind) {
-    case ErrorBarKind::observed_order:
-      return "observed order";
-    case ErrorBarKind::out_of_range:
-      return "observed order out of range";
+    case ErrorBarKind::converging:
+      return "converging";
     case ErrorBarKind::oscillatory:
       return "swinging from mesh to mesh";
+    case ErrorBarKind::drifting:
+      return "drifting apart";
     case ErrorBarKind::two_meshes:
       return "two meshes only";
     case ErrorBarKind::round_off:
@@ -86,7 +81,7 @@ const char* error_bar_words(ErrorBarKind kind) {
 }
 
 ErrorBar error_bar(const std::vector<double>& values) {
-  const ErrorBar unknown{std::numeric_limits<double>::quiet_NaN(), 0.0, ErrorBarKind::unknown};
+  const ErrorBar unknown{std::numeric_limits<double>::quiet_NaN(), ErrorBarKind::unknown};
   if (values.size() < 2) return unknown;
   const std::size_t n = values.size();
   const double fine = values[n - 1], medium = values[n - 2];
@@ -95,10 +90,9 @@ ErrorBar error_bar(const std::vector<double>& values) {
   const double largest = std::max({std::abs(fine), std::abs(medium), std::abs(coarse)});
   const double change = std::max(std::abs(fine - medium), std::abs(medium - coarse));
   if (change <= round_off * largest)
-    return {std::max(change, std::numeric_limits<double>::epsilon() * largest), formal_order,
+    return {std::max(change, std::numeric_limits<double>::epsilon() * largest),
             ErrorBarKind::round_off};
-  if (n == 2)
-    return {index_of(change, formal_order, wide_factor), formal_order, ErrorBarKind::two_meshes};
+  if (n == 2) return {index_of(change, formal_order, wide_factor), ErrorBarKind::two_meshes};
   return three_meshes(coarse, medium, fine);
 }
 

@@ -1,10 +1,16 @@
-/// Error bars from nested meshes: the grid convergence index with observed order.
-///   p = |ln|e32/e21| + q| / ln r21,  GCI = Fs |e21| / (r21^p - 1),  Fs = 1.25
-/// e21 = phi2 - phi1, e32 = phi3 - phi2; 1 is the finest mesh. Where the observed order leaves
-/// [0.5, 1.1 x formal order] or the values oscillate or drift apart, Fs = 3 with the formal order,
-/// and never less than what order 0.5 would give for values that drift apart.
-/// Sources: Celik et al., J. Fluids Engineering 130 (2008) 078001; ASME V&V 20-2009; Roache,
-/// J. Fluids Engineering 133 (2011) 115501 (Fs = 3 with the formal order outside the range).
+/// Error bars from three nested meshes, for a scheme whose order is mixed: two where the flow is
+/// smooth, one at shocks and at kinks of the wall. phi = exact + g1 h + g2 h^2 with h = 1, 2, 4,
+///   e21 = phi2 - phi1,  e32 = phi3 - phi2   (1 is the finest mesh)
+///   g2 = (e32 - 2 e21)/6,  g1 = e21 - 3 g2,  half-width = Fs (|g1| + |g2|)
+/// The terms count by their size, so that they cannot cancel by chance. Fs = 1.25, and 3 where the
+/// last change is not smaller than the one before it, so that the meshes do not converge. A pure
+/// second-order error gives the grid convergence index of order 2, a pure first-order one that of
+/// order 1. Where figures converge more slowly than at order 1, which the terms do not cover, the
+/// index of the observed order p = log2(e32/e21), at least one half, is the least half-width:
+/// Fs |e21| / (2^p - 1). Two meshes: Fs = 3 with the formal order 2.
+/// Sources: Roy, AIAA J. 41(4) (2003) 595-604 (mixed order); Roache, J. Fluids Engineering 116
+/// (1994) 405-413 (grid convergence index, Fs); Celik et al., J. Fluids Engineering 130 (2008)
+/// 078001 and ASME V&V 20-2009 (`grid_convergence`).
 #pragma once
 #include <vector>
 
@@ -25,18 +31,17 @@ GridConvergence grid_convergence(double fine, double medium, double coarse, doub
                                  double ratio_32);
 
 enum class ErrorBarKind {
-  observed_order,  ///< the observed order is sound
-  out_of_range,    ///< order outside its range, or drifting apart: safety factor 3
-  oscillatory,     ///< the sign of the change alternates: safety factor 3
-  two_meshes,      ///< only two values: safety factor 3, formal order
-  round_off,       ///< the meshes differ by round-off alone
-  unknown          ///< one value: the half-width is not a number
+  converging,   ///< each change smaller than the one before, of the same sign
+  oscillatory,  ///< the sign of the change alternates
+  drifting,     ///< of the same sign, the last change the larger: safety factor 3
+  two_meshes,   ///< only two values: safety factor 3, formal order
+  round_off,    ///< the meshes differ by round-off alone
+  unknown       ///< one value: the half-width is not a number
 };
 const char* error_bar_words(ErrorBarKind kind);  ///< a few plain words
 
 struct ErrorBar {
   double half_width = 0.0;  ///< same unit as the figure
-  double order = 0.0;       ///< the one used
   ErrorBarKind kind = ErrorBarKind::unknown;
 };
 

@@ -198,10 +198,9 @@ std::string method_section(const ReportInput& input) {
       "frame "
       "of the blades: cell-centred finite volumes, second order, solved steadily by a "
       "pseudo-transient Newton-Krylov method; in- and outflow states are mixed out. Three nested "
-      "meshes give each figure its error bar after Celik et al. (2008); where its observed order "
-      "is "
-      "out of range or it swings from mesh to mesh the factor of safety is 3. An error bar holds "
-      "the error of the numbers, not what the model leaves out.</p>\n",
+      "meshes give each figure its error bar: the terms of first and second order after Roy (2003) "
+      "with a factor of safety of 1.25, or of 3 where the meshes do not converge. An error bar "
+      "holds the error of the numbers, not what the model leaves out.</p>\n",
       escape_html(input.version), input.heat_capacity_ratio, input.gas_constant);
   out += solution_table(input);
   const bool drawn = std::any_of(input.points.begin(), input.points.end(), has_history);

@@ -64,7 +64,7 @@ PointResult point(bool wheel) {
   p.pressure = {{1e-3, 1e-3, 5e-324, 1.2e5, 0.4}};
   p.cells = 8000;
   p.seconds = 1.25;
-  p.numerical_error.basis = "21 observed order, 4 differing by round-off alone";
+  p.numerical_error.basis = "21 converging, 4 differing by round-off alone";
   p.remarks = {"choked", "tab\there, \xc3\xa9"};
   return p;
 }
