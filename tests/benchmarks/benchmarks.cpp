@@ -76,7 +76,7 @@ std::string head(const Scale& scale) {
       "and\n"
       "those that count are ratios taken in one run. REE is the unit: the wall time of one\n"
       "second-order residual evaluation on the same mesh with the same threads, the median of\n"
-      "seven batches.\n\n{}",
+      "five batches.\n\n{}",
       scale.name, machine_words());
 }
 

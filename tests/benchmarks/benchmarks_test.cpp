@@ -2,10 +2,12 @@
 // The tools that make figures are held to cases worked by hand.
 #include <gtest/gtest.h>
 
+#include <algorithm>
 #include <cmath>
 #include <cstdlib>
 #include <filesystem>
 #include <regex>
+#include <sstream>
 #include <string>
 
 #include "mesh/structured.h"
@@ -13,6 +15,7 @@
 #include "tests/benchmarks/parts.h"
 #include "tests/benchmarks/power_law.h"
 #include "tests/benchmarks/residual_bytes.h"
+#include "tests/benchmarks/table.h"
 
 namespace falcate::benchmarks {
 namespace {
@@ -22,6 +25,18 @@ std::string section_of(const std::string& page, const std::string& part) {
   const std::string begin = "<!-- begin " + part + " -->", end = "<!-- end " + part + " -->";
   const std::size_t from = page.find(begin), to = page.find(end);
   return from == std::string::npos || to == std::string::npos ? "" : page.substr(from, to - from);
+}
+
+/// Every row of a table has as many upright strokes as the row above it.
+bool tables_are_whole(const std::string& section) {
+  std::istringstream lines(section);
+  std::string above;
+  for (std::string line; std::getline(lines, line); above = line) {
+    if (line.empty() || line[0] != '|' || above.empty() || above[0] != '|') continue;
+    if (std::count(line.begin(), line.end(), '|') != std::count(above.begin(), above.end(), '|'))
+      return false;
+  }
+  return true;
 }
 
 TEST(Benchmarks, EveryPartFillsItsTables) {
@@ -37,8 +52,15 @@ TEST(Benchmarks, EveryPartFillsItsTables) {
     EXPECT_TRUE(std::regex_search(section, std::regex(R"(\|---[-:|]*\|\n\|[^\n]*\d[^\n]*\|\n)")))
         << section;
     EXPECT_FALSE(std::regex_search(section, std::regex(R"(\b(nan|inf)\b)"))) << section;
+    EXPECT_TRUE(tables_are_whole(section)) << section;
   }
   EXPECT_NE(page.find("Machine: "), std::string::npos);
+}
+
+TEST(Benchmarks, TablesHaveWholeRows) {
+  Table table({"row", "a", "b"});
+  table.add({"x", "1", "2"});
+  EXPECT_EQ(table.text(), "| row | a | b |\n|---|---:|---:|\n| x | 1 | 2 |\n");
 }
 
 TEST(PowerLaw, FindsTheExponent) {

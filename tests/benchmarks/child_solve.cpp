@@ -50,7 +50,7 @@ std::string child_report(int cells) {
   solver::FlowProblem problem = passage_problem(row);
   problem.mesh = &meshes.levels.back();
   out.cells = problem.mesh->cell_count();
-  out.solve_seconds = solve.seconds;
+  out.solve_seconds = solve.time.wall;
   out.residual_seconds = residual_seconds(problem, solve.finest.cells);
   out.steps = solve.steps;
   out.krylov_iterations = solve.krylov_iterations;

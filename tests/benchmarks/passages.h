@@ -7,6 +7,7 @@
 
 #include "mesh/passage_mesh.h"
 #include "solver/flow_problem.h"
+#include "tests/benchmarks/timing.h"
 
 namespace falcate::benchmarks {
 
@@ -30,7 +31,7 @@ mesh::MeshLevels passage_meshes(const PassageRow& row, int cells);
 solver::FlowProblem passage_problem(const PassageRow& row);
 
 struct ColdSolve {
-  double seconds = 0.0;  ///< wall, all meshes
+  Elapsed time;  ///< all meshes
   int steps = 0;
   long krylov_iterations = 0;
   solver::FlowSolution finest;

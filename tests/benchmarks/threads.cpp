@@ -28,7 +28,7 @@ Run run_on(int threads, const PassageRow& row, const mesh::MeshLevels& meshes, l
   ColdSolve solve = solve_from_cold(row, meshes);
   // Before and after the solve, so that the load of the machine is the same.
   run.arithmetic = 0.5 * (run.arithmetic + arithmetic_seconds(threads, rounds));
-  run.solve = solve.seconds;
+  run.solve = solve.time.wall;
   run.cells = std::move(solve.finest.cells);
   return run;
 }

@@ -3,6 +3,7 @@
 #include <algorithm>
 #include <chrono>
 #include <cstddef>
+#include <ctime>
 #include <vector>
 
 namespace falcate::benchmarks {
@@ -12,6 +13,25 @@ double seconds_of(const Work& work) {
   const auto began = std::chrono::steady_clock::now();
   work();
   return std::chrono::duration<double>(std::chrono::steady_clock::now() - began).count();
+}
+
+struct Elapsed {
+  double wall = 0.0;
+  double processor = 0.0;  ///< of all threads of this process
+  /// 1 where one thread had a core to itself.
+  double core_share() const { return processor / wall; }
+};
+
+template <class Work>
+Elapsed elapsed(const Work& work) {
+  const auto processor_time = [] {
+    timespec t{};
+    clock_gettime(CLOCK_PROCESS_CPUTIME_ID, &t);
+    return static_cast<double>(t.tv_sec) + 1e-9 * static_cast<double>(t.tv_nsec);
+  };
+  const double began = processor_time();
+  const double wall = seconds_of(work);
+  return {wall, processor_time() - began};
 }
 
 /// How many times work of `first` seconds is to be done to fill `span` seconds.
@@ -28,12 +48,12 @@ double best_seconds(const Work& work) {
   return best;
 }
 
-/// The median of seven batches, each long enough that other programs of a busy machine slow it as
+/// The median of five batches, each long enough that other programs of a busy machine slow it as
 /// they slow a whole solve.
 template <class Work>
 double median_seconds(const Work& work) {
-  constexpr std::size_t batches = 7;
-  const int repeats = repeats_for(seconds_of(work), 0.08, 3, 10000);
+  constexpr std::size_t batches = 5;
+  const int repeats = repeats_for(seconds_of(work), 0.06, 3, 10000);
   std::vector<double> seconds;
   for (std::size_t k = 0; k < batches; ++k)
     seconds.push_back(seconds_of([&] {
