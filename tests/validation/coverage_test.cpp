@@ -47,6 +47,16 @@ TEST(Coverage, TheTableHasALineForEveryFlowAndFigure) {
   EXPECT_THAT(text, testing::HasSubstr("| all | 2 | 100.0 % |"));
   EXPECT_THAT(text, testing::HasSubstr("| figure | 2 | 100.0 % |"));
   EXPECT_THAT(text, testing::HasSubstr("- A: invented.\n"));
+  EXPECT_THAT(text, testing::Not(testing::HasSubstr("Outside the bar")));
+}
+
+TEST(Coverage, TellsWhatLiesOutside) {
+  const ExactCase flow{"A", "an invented flow", "invented", 1, {}};
+  Finding miss = power_law(3.0, 0.01, 2.0);
+  miss.exact = 4.0;
+  miss.unit = "deg";
+  const std::string text = coverage_section({{&flow, {{"10 cells", {miss}, true}}}});
+  EXPECT_THAT(text, testing::HasSubstr("| A: 10 cells | figure 3.01 deg (exact 4) | 79.20 |\n"));
 }
 
 TEST(ExactCases, EachHasTenConditionsAndASourceAndANameOfItsOwn) {

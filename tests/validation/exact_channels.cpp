@@ -9,6 +9,7 @@
 
 #include "mesh/structured.h"
 #include "solver/steady_solver.h"
+#include "tests/verification/exact_flow.h"
 
 namespace falcate::validation {
 namespace {
@@ -198,36 +199,8 @@ Condition vortex_condition(const CurvedCondition& c) {
 }
 
 // Ringleb's flow between two of its streamlines k; speed q, angle of the stream asin(q/k).
-struct Hodograph {
-  double a, rho, j;
-  explicit Hodograph(double q)
-      : a(std::sqrt(1.0 - 0.5 * (gamma - 1.0) * q * q)),
-        rho(std::pow(a, 2.0 / (gamma - 1.0))),
-        j(1.0 / a + 1.0 / (3.0 * a * a * a) + 1.0 / (5.0 * std::pow(a, 5)) -
-          0.5 * std::log((1.0 + a) / (1.0 - a))) {}
-};
-
-Point ringleb_place(double k, double q, double side) {
-  const Hodograph h(q);
-  const double x = 0.5 / h.rho * (2.0 / (k * k) - 1.0 / (q * q)) - 0.5 * h.j;
-  const double y = std::sqrt(std::max(0.0, 1.0 - q * q / (k * k))) / (k * h.rho * q);
-  return {x, side * y};
-}
-
 solver::Primitive ringleb(const Point& x) {
-  double low = 0.2, high = 2.0;  // circles of equal speed shrink as the speed rises
-  for (int i = 0; i < 200; ++i) {
-    const double q = 0.5 * (low + high);
-    const Hodograph h(q);
-    const double dx = x.x() + 0.5 * h.j, radius = 0.5 / (h.rho * q * q);
-    (dx * dx + x.y() * x.y() < radius * radius ? low : high) = q;
-  }
-  const double q = 0.5 * (low + high);
-  const Hodograph h(q);
-  const double square = 2.0 * h.rho * (x.x() + 0.5 * h.j) + 1.0 / (q * q);  // 2/k^2
-  const double sine = std::min(1.0, q * std::sqrt(0.5 * square));
-  const double cosine = std::sqrt(1.0 - sine * sine) * (x.y() < 0.0 ? -1.0 : 1.0);
-  return {h.rho, q * cosine, -q * sine, h.rho * h.a * h.a / gamma};
+  return verification::exact_flow("ringleb_transonic").exact(x);
 }
 
 struct RinglebRange {
@@ -265,7 +238,7 @@ Point ringleb_map(const RinglebRange& range, double xi, double eta) {
   const double k = range.inner + (range.outer - range.inner) * eta;
   const double start = std::asin(range.top / k), way = range.end * xi;
   const double angle = start + (std::acos(-1.0) - 2.0 * start) * way;
-  return ringleb_place(k, k * std::sin(angle), way <= 0.5 ? 1.0 : -1.0);
+  return verification::ringleb_point(k, k * std::sin(angle), way <= 0.5 ? 1.0 : -1.0);
 }
 
 /// Force of the exact flow on a wall: pressure times the normal out of the gas, along the wall.
