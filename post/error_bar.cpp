@@ -23,7 +23,7 @@ double index_of(double change, double order, double safety_factor) {
 ErrorBar three_meshes(double coarse, double medium, double fine) {
   const double e21 = medium - fine, e32 = coarse - medium;
   const double second = (e32 - 2.0 * e21) / 6.0, first = e21 - 3.0 * second;
-  const double size = std::abs(first) + std::abs(second);
+  const double size = std::max({std::abs(first + second), std::abs(first), std::abs(second)});
   const bool converges = std::abs(e21) < std::abs(e32);
   if (e21 * e32 < 0.0)
     return {(converges ? factor : wide_factor) * size, ErrorBarKind::oscillatory};

@@ -1,12 +1,12 @@
 /// Error bars from three nested meshes, for a scheme whose order is mixed: two where the flow is
 /// smooth, one at shocks and at kinks of the wall. phi = exact + g1 h + g2 h^2 with h = 1, 2, 4,
 ///   e21 = phi2 - phi1,  e32 = phi3 - phi2   (1 is the finest mesh)
-///   g2 = (e32 - 2 e21)/6,  g1 = e21 - 3 g2,  half-width = Fs (|g1| + |g2|)
-/// The terms count by their size, so that they cannot cancel by chance. Fs = 1.25, and 3 where the
-/// last change is not smaller than the one before it, so that the meshes do not converge. A pure
-/// second-order error gives the grid convergence index of order 2, a pure first-order one that of
-/// order 1. Where figures converge more slowly than at order 1, which the terms do not cover, the
-/// index of the observed order p = log2(e32/e21), at least one half, is the least half-width:
+///   g2 = (e32 - 2 e21)/6,  g1 = e21 - 3 g2,  half-width = Fs max(|g1 + g2|, |g1|, |g2|)
+/// so that terms of opposite sign, whose sum may vanish by chance, still count. Fs = 1.25, 3 where
+/// the last change is not smaller than the one before it, so that the meshes do not converge. A
+/// pure second-order error gives the grid convergence index of order 2, a pure first-order one that
+/// of order 1. Where figures converge more slowly than at order 1, which the terms do not cover,
+/// the index of the observed order p = log2(e32/e21), at least one half, is the least half-width:
 /// Fs |e21| / (2^p - 1). Two meshes: Fs = 3 with the formal order 2.
 /// Sources: Roy, AIAA J. 41(4) (2003) 595-604 (mixed order); Roache, J. Fluids Engineering 116
 /// (1994) 405-413 (grid convergence index, Fs); Celik et al., J. Fluids Engineering 130 (2008)
