@@ -158,22 +158,7 @@ class March {
   }
 
   /// The mean states on the planes follow an unsteady flow slowly: they are those of its average.
-  void follow_planes() {
-    constexpr double share = 0.1;
-    const InletStream in = problem_.inlet;
-    const OutletStream out = problem_.outlet;
-    refresh_planes(problem_, cells_);
-    const auto mix = [](double& now, double before) { now = before + share * (now - before); };
-    mix(problem_.inlet.u, in.u);
-    mix(problem_.inlet.v, in.v);
-    mix(problem_.inlet.impedance, in.impedance);
-    mix(problem_.inlet.beta, in.beta);
-    mix(problem_.outlet.u, out.u);
-    mix(problem_.outlet.v, out.v);
-    mix(problem_.outlet.impedance, out.impedance);
-    mix(problem_.outlet.mach_squared, out.mach_squared);
-    problem_.outlet.axially_supersonic = problem_.outlet.u > 1.0;
-  }
+  void follow_planes() { refresh_planes(problem_, cells_, 0.1); }
 
   /// Density and pressure stay those of a gas: cells all but empty hold up neither the others nor
   /// the whole march, and none takes in more than it can.
