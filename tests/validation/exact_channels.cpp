@@ -10,12 +10,16 @@
 #include "mesh/structured.h"
 #include "solver/steady_solver.h"
 #include "tests/verification/exact_flow.h"
+#include "tests/verification/shock_behind_wave.h"
 
 namespace falcate::validation {
 namespace {
 
 using mesh::PatchKind;
 using mesh::Point;
+using verification::behind_shock;
+using verification::BehindShock;
+using verification::wave_angle;
 
 constexpr double gamma = 1.4, degree = std::numbers::pi / 180.0;
 
@@ -287,28 +291,6 @@ Condition ringleb_condition(const RinglebCondition& c, double top, double end) {
 }
 
 // A shock that meets a wall and is reflected.
-struct BehindShock {
-  double turning, pressure_ratio, density_ratio, mach;
-};
-BehindShock behind_shock(double mach, double wave) {
-  const double mn2 = std::pow(mach * std::sin(wave), 2);
-  const double density = (gamma + 1.0) * mn2 / ((gamma - 1.0) * mn2 + 2.0);
-  const double pressure = 1.0 + 2.0 * gamma / (gamma + 1.0) * (mn2 - 1.0);
-  const double turning = wave - std::atan(std::tan(wave) / density);
-  const double normal = std::sqrt((1.0 + 0.2 * mn2) / (gamma * mn2 - 0.2));
-  return {turning, pressure, density, normal / std::sin(wave - turning)};
-}
-
-/// The weak shock that turns the stream by `turning`.
-double wave_angle(double mach, double turning) {
-  double low = std::asin(1.0 / mach), high = low + turning + 10.0 * degree;
-  for (int i = 0; i < 60; ++i) {
-    const double middle = 0.5 * (low + high);
-    (behind_shock(mach, middle).turning < turning ? low : high) = middle;
-  }
-  return low;
-}
-
 struct Reflection {
   double mach, wave;  ///< of the stream; of the first shock, rad
   BehindShock first = behind_shock(mach, wave);
