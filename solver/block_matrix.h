@@ -1,6 +1,6 @@
 /// Sparse matrix of 4x4 blocks (compressed rows, columns ascending) and its product with a vector,
-/// in single precision: it serves preconditioners, which need no more, and half the memory is read.
-/// Vectors hold 4 values a cell, one cell after the other.
+/// in single precision: linear systems of Newton's method and their preconditioners need no more,
+/// and half the memory is read. Vectors hold 4 values a cell, one cell after the other.
 #pragma once
 #include <Eigen/Core>
 #include <vector>
