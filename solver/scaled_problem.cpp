@@ -74,27 +74,15 @@ InletStream inlet_stream(const FlowProblem& problem) {
   return s;
 }
 
-/// Adjoining-cell mean over a plane.
+/// Mean over a plane of a quantity of the adjoining cells, four values each.
+template <class Quantity>
 State<double> plane_mean(const mesh::PassageMesh& mesh, const Plane& plane,
-                         std::span<const State<double>> cells) {
+                         std::span<const State<double>> cells, const Quantity& quantity) {
   State<double> mean{};
   for (std::size_t i = 0; i < plane.waves.size(); ++i) {
     const auto f = static_cast<std::size_t>(plane.first_face) + i;
-    const auto& q = cells[static_cast<std::size_t>(mesh.faces()[f].left)];
-    for (std::size_t k = 0; k < 4; ++k) mean[k] += plane.waves.weight(i) * q[k];
-  }
-  return mean;
-}
-
-/// Mean fluxes of the adjoining cells over a plane.
-State<double> plane_fluxes(const mesh::PassageMesh& mesh, const Plane& plane,
-                           std::span<const State<double>> cells, double gamma) {
-  State<double> mean{};
-  for (std::size_t i = 0; i < plane.waves.size(); ++i) {
-    const auto f = static_cast<std::size_t>(plane.first_face) + i;
-    const auto& q = cells[static_cast<std::size_t>(mesh.faces()[f].left)];
-    const auto flux = physical_flux(q, mesh::Point(1.0, 0.0), gamma);
-    for (std::size_t k = 0; k < 4; ++k) mean[k] += plane.waves.weight(i) * flux[k];
+    const State<double> value = quantity(cells[static_cast<std::size_t>(mesh.faces()[f].left)]);
+    for (std::size_t k = 0; k < 4; ++k) mean[k] += plane.waves.weight(i) * value[k];
   }
   return mean;
 }
@@ -218,7 +206,7 @@ void refresh_planes(ScaledProblem& problem, std::span<const State<double>> cells
   const double gamma = problem.gamma;
   const auto follow = [share](double& mean, double now) { mean += share * (now - mean); };
   const auto follow_stream = [&](auto& stream, const Plane& plane) {
-    const auto q = plane_mean(*problem.mesh, plane, cells);
+    const auto q = plane_mean(*problem.mesh, plane, cells, [](const auto& cell) { return cell; });
     const double a = speed_of_sound(q, gamma);
     follow(stream.u, q[velocity_x] / a);
     follow(stream.v, q[velocity_y] / a);
@@ -231,7 +219,9 @@ void refresh_planes(ScaledProblem& problem, std::span<const State<double>> cells
   }
   for (const Plane& plane : problem.outlet_planes) {
     follow(problem.outlet.mach_squared, follow_stream(problem.outlet, plane));
-    const auto fluxes = plane_fluxes(*problem.mesh, plane, cells, gamma);
+    const auto fluxes = plane_mean(*problem.mesh, plane, cells, [gamma](const auto& cell) {
+      return physical_flux(cell, mesh::Point(1.0, 0.0), gamma);
+    });
     follow(problem.outlet.pressure_behind_shock, pressure_behind_shock(fluxes, gamma));
     // A set pressure above it drives the shock into the row, one below it sweeps it away.
     problem.outlet.axially_supersonic =
